@@ -1,0 +1,108 @@
+// Everything that was measured about a picture: the only thing that the criteria and the output take.
+#pragma once
+
+#include <cstdint>
+#include <optional>
+#include <string>
+#include <vector>
+
+#include "colour/lab.h"
+#include "colour/rgb.h"
+#include "picture/picture.h"
+
+namespace tincture {
+
+// What was read. Texts are valid UTF-8; what is unknown is empty.
+struct PictureFacts {
+    std::string file;  // base name
+    std::uint32_t width = 0;
+    std::uint32_t height = 0;
+    int channels = 0;                  // as stored: alpha not counted
+    int bits = 8;
+    std::optional<std::string> profile;  // the ICC profile's own description
+    std::optional<Resolution> resolution;
+    std::uint64_t opaque_pixels = 0;
+    // Exact, unless colour_cell_de is set: then so many cells of that edge (dE76) stand for them.
+    std::uint64_t distinct_colours = 0;
+    std::optional<double> colour_cell_de;
+};
+
+// What the count is judged on. Unset: not measured.
+struct EvidenceFacts {
+    std::optional<std::string> kind;  // "flat art" or "continuous tone"
+    std::optional<double> flat_share;
+    std::optional<double> noise;  // dE76
+};
+
+// One colour of a palette, as it is written.
+struct Swatch {
+    Rgb8 written;      // in the RGB space of the reduced picture
+    Rgb8 srgb;         // the same in sRGB
+    std::optional<double> hex_de00;  // how far `srgb` is off, where sRGB cannot hold the colour
+    Lab lab;           // of `written`
+    std::uint64_t pixels = 0;  // opaque pixels of the original that are nearest to it
+    double share = 0;          // pixels / opaque pixels
+    bool kept = false;         // asked for with --keep
+    std::string name;          // plain words, unique within its palette
+};
+
+// The palette of one count, largest share first.
+struct Palette {
+    int count = 0;
+    std::vector<Swatch> swatches;
+};
+
+// One row of the error curve. All but evidence_mse are over every opaque pixel, each against the
+// written palette colour nearest to it in CIELAB.
+struct CurvePoint {
+    int count = 0;
+    double evidence_mse = 0;  // what clustering minimised: mean squared dE76, exact centres
+    double mse = 0;           // mean squared dE76
+    double mean_de00 = 0;
+    double p95_de00 = 0;  // the smallest difference that covers 95 % of the pixels
+    double max_de00 = 0;
+    std::optional<double> closest_pair_de00;  // between two palette colours; unset below 2 colours
+};
+
+// What one criterion says of the count, with its reason in words and its figure.
+struct Vote {
+    std::string criterion;
+    std::optional<int> count;  // unset: it abstains
+    std::string reason;
+};
+
+struct Proposal {
+    int count = 0;
+    int low = 0;  // the defensible range, low <= count <= high
+    int high = 0;
+    double confidence = 0;  // 0 to 1
+    std::string sentence;
+    std::vector<Vote> votes;
+};
+
+// The label map of the reduced picture.
+struct LabelFacts {
+    std::vector<double> shares;  // per swatch of the palette that was used
+    double tidied_share = 0;     // part of the opaque pixels that tidying moved to another label
+};
+
+struct Study {
+    PictureFacts picture;
+    EvidenceFacts evidence;
+    double tolerance = 3.0;  // CIEDE2000 at the 95th percentile
+    int at_least = 2;        // the range that is proposed from and listed
+    int at_most = 24;
+    // Counts rise; one step apart up to the end of the sweep, then perhaps the count asked for.
+    std::vector<CurvePoint> curve;
+    std::vector<Palette> palettes;  // one for each point of the curve, same order
+    Proposal proposal;
+    int count = 0;                // used for the reduced picture
+    bool count_was_given = false;
+    LabelFacts labels;
+};
+
+// The point of the curve, or the palette, of `count`; throws std::out_of_range where there is none.
+[[nodiscard]] const CurvePoint& curve_at(const Study& study, int count);
+[[nodiscard]] const Palette& palette_at(const Study& study, int count);
+
+}  // namespace tincture

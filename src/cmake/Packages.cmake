@@ -1,0 +1,42 @@
+# Finds the libraries; one that is missing is named in one line, with its Debian package.
+find_package(PkgConfig QUIET)
+if(NOT PKG_CONFIG_FOUND)
+    message(FATAL_ERROR "tincture needs pkg-config: apt-get install pkg-config")
+endif()
+
+function(tincture_need target module package)
+    pkg_check_modules(${target} QUIET IMPORTED_TARGET ${module})
+    if(NOT ${target}_FOUND)
+        message(FATAL_ERROR "tincture needs ${module}: apt-get install ${package}")
+    endif()
+endfunction()
+
+function(tincture_need_header header package)
+    string(MAKE_C_IDENTIFIER "HAVE_${header}" found)
+    find_path(${found} ${header} PATH_SUFFIXES stb)
+    mark_as_advanced(${found})
+    if(NOT ${found})
+        message(FATAL_ERROR "tincture needs ${header}: apt-get install ${package}")
+    endif()
+endfunction()
+
+tincture_need(PNG libpng libpng-dev)
+tincture_need(JPEG libjpeg libjpeg62-turbo-dev)
+tincture_need(TIFF libtiff-4 libtiff-dev)
+tincture_need(WEBP libwebp libwebp-dev)
+tincture_need(WEBPDEMUX libwebpdemux libwebp-dev)
+tincture_need(AVIF libavif libavif-dev)
+tincture_need(LCMS lcms2 liblcms2-dev)
+tincture_need(HWY libhwy libhwy-dev)
+tincture_need(TBB tbb libtbb-dev)
+tincture_need(ZLIB zlib zlib1g-dev)
+tincture_need_header(CLI/CLI.hpp libcli11-dev)
+tincture_need_header(nlohmann/json.hpp nlohmann-json3-dev)
+tincture_need_header(stb_image.h libstb-dev)
+
+set(TINCTURE_FONT_DIR /usr/share/fonts/truetype/roboto/unhinted/RobotoTTF CACHE PATH
+    "Folder of the fonts that drawings are set in (Roboto, Apache-2.0)")
+if(NOT EXISTS "${TINCTURE_FONT_DIR}/Roboto-Regular.ttf")
+    message(FATAL_ERROR
+        "tincture needs Roboto-Regular.ttf: apt-get install fonts-roboto-unhinted")
+endif()
