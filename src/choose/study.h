@@ -1,4 +1,5 @@
-// Everything that was measured about a picture: the only thing that the criteria and the output take.
+// Everything that was measured about a picture: the only thing that the criteria and the output
+// take.
 #pragma once
 
 #include <cstdint>
@@ -17,7 +18,7 @@ struct PictureFacts {
     std::string file;  // base name
     std::uint32_t width = 0;
     std::uint32_t height = 0;
-    int channels = 0;                  // as stored: alpha not counted
+    int channels = 0;  // as stored: alpha not counted
     int bits = 8;
     std::optional<std::string> profile;  // the ICC profile's own description
     std::optional<Resolution> resolution;
@@ -36,14 +37,14 @@ struct EvidenceFacts {
 
 // One colour of a palette, as it is written.
 struct Swatch {
-    Rgb8 written;      // in the RGB space of the reduced picture
-    Rgb8 srgb;         // the same in sRGB
+    Rgb8 written;                    // in the RGB space of the reduced picture
+    Rgb8 srgb;                       // the same in sRGB
     std::optional<double> hex_de00;  // how far `srgb` is off, where sRGB cannot hold the colour
-    Lab lab;           // of `written`
-    std::uint64_t pixels = 0;  // opaque pixels of the original that are nearest to it
-    double share = 0;          // pixels / opaque pixels
-    bool kept = false;         // asked for with --keep
-    std::string name;          // plain words, unique within its palette
+    Lab lab;                         // of `written`
+    std::uint64_t pixels = 0;        // opaque pixels of the original that are nearest to it
+    double share = 0;                // pixels / opaque pixels
+    bool kept = false;               // asked for with --keep
+    std::string name;                // plain words, unique within its palette
 };
 
 // The palette of one count, largest share first.
@@ -96,7 +97,7 @@ struct Study {
     std::vector<CurvePoint> curve;
     std::vector<Palette> palettes;  // one for each point of the curve, same order
     Proposal proposal;
-    int count = 0;                // used for the reduced picture
+    int count = 0;  // used for the reduced picture
     bool count_was_given = false;
     LabelFacts labels;
 };

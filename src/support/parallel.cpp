@@ -1,11 +1,11 @@
 #include "support/parallel.h"
 
+#include <tbb/global_control.h>
+#include <tbb/parallel_for.h>
+
 #include <memory>
 #include <thread>
 #include <vector>
-
-#include <tbb/global_control.h>
-#include <tbb/parallel_for.h>
 
 namespace tincture {
 namespace {
@@ -18,7 +18,9 @@ namespace {
 #endif
 #endif
 
-std::size_t processor_count() { return std::max(1U, std::thread::hardware_concurrency()); }
+std::size_t processor_count() {
+    return std::max(1U, std::thread::hardware_concurrency());
+}
 
 #ifdef TINCTURE_PLAIN_THREADS
 std::size_t thread_limit = processor_count();

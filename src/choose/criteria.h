@@ -1,0 +1,26 @@
+// The criteria: each a pure function of what was measured, in a file of its own. To add one, write
+// it beside these and name it in collect_votes().
+#pragma once
+
+#include <span>
+#include <vector>
+
+#include "choose/study.h"
+
+namespace tincture {
+
+// The part of the curve that has no gaps: a count asked for beyond the sweep is left out.
+[[nodiscard]] std::span<const CurvePoint> swept(const Study& study);
+
+// The count at which the logarithm of the error stops falling steeply.
+[[nodiscard]] Vote knee_vote(const Study& study);
+
+// The smallest count at which 95 % of the pixels are within the tolerance.
+[[nodiscard]] Vote tolerance_vote(const Study& study);
+
+// All colours of the picture, where these are no more than the range allows.
+[[nodiscard]] Vote distinct_colours_vote(const Study& study);
+
+[[nodiscard]] std::vector<Vote> collect_votes(const Study& study);
+
+}  // namespace tincture

@@ -1,0 +1,44 @@
+#include "choose/measure.h"
+
+#include "choose/error_curve.h"
+#include "palette/written_colours.h"
+#include "support/cancel.h"
+#include "support/parallel.h"
+
+namespace tincture {
+namespace {
+
+std::vector<Lab> labs_of(const Centres& centres) {
+    std::vector<Lab> labs;
+    for (int k = 0; k < centres.count; ++k) {
+        const float* row = centres.row(k);
+        labs.push_back({row[0], row[1], row[2]});
+    }
+    return labs;
+}
+
+}  // namespace
+
+void measure_curve(Study& study, const ColourTable& table, const Sweep& sweep,
+                   const ColourSpace& written_space) {
+    const ColourSpace srgb = ColourSpace::standard(ColourModel::rgb);
+    study.curve.assign(sweep.centres.size(), {});
+    study.palettes.assign(sweep.centres.size(), {});
+    parallel_for(sweep.centres.size(), [&](std::size_t i) {
+        throw_if_cancelled();
+        const std::size_t at = sweep.centres.size() - 1 - i;  // the longest first
+        const std::vector<Rgb8> written =
+            written_colours(labs_of(sweep.centres[at]), written_space);
+        std::vector<Lab> labs;
+        for (const Rgb8 colour : written) labs.push_back(written_space.lab_of(colour));
+        const PaletteCost cost = measure_cost(table, labs);
+        study.palettes[at] =
+            make_palette(written, labs, cost.pixels, sweep.kept, written_space, srgb);
+        const double evidence = sweep.objective[at] / static_cast<double>(table.opaque_pixels);
+        study.curve[at] = {sweep.centres[at].count, evidence,      cost.mse,
+                           cost.mean_de00,          cost.p95_de00, cost.max_de00,
+                           closest_pair(labs)};
+    });
+}
+
+}  // namespace tincture

@@ -1,0 +1,16 @@
+// Fills a study: what each count of a sweep costs, and what that speaks for.
+#pragma once
+
+#include "choose/study.h"
+#include "cluster/sweep.h"
+#include "colour/colour_space.h"
+#include "histogram/colour_table.h"
+
+namespace tincture {
+
+// Writes the palette of every count of the sweep in `written_space` and measures it on the table.
+// Fills `curve` and `palettes`; takes nothing else from the study.
+void measure_curve(Study& study, const ColourTable& table, const Sweep& sweep,
+                   const ColourSpace& written_space);
+
+}  // namespace tincture

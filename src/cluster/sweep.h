@@ -1,0 +1,35 @@
+// Clustering for every count of a range.
+#pragma once
+
+#include <functional>
+#include <vector>
+
+#include "histogram/weighted_points.h"
+
+namespace tincture {
+
+struct SweepOptions {
+    int max_count =
+        25;  // every count from max(1, fixed) to this is measured, if there are as many points
+    int extra_count = 0;  // one more count beyond max_count, or 0
+    Centres kept;         // centres that must be in every result, unmoved (may be empty)
+    // Called now and then with the part that is done, 0 to 1; from any thread, one at a time.
+    std::function<void(double)> progress;
+};
+
+// Centres for each count, rising, the kept ones first, and their objectives: the sum over the
+// points of weight * squared distance to the nearest centre, inner scatter included.
+struct Sweep {
+    std::vector<Centres> centres;
+    std::vector<double> objective;
+    int kept = 0;
+};
+
+// Each count starts from the one before: the cluster whose split gains most is split, then centres
+// are exchanged (the one missed least for a half of the one split best) as long as that helps. This
+// search runs on coarse cells of the points; its results are polished on the points themselves. The
+// objective never rises with the count. Deterministic, for any number of threads. The counts end at
+// the number of points, where the objective is the inner scatter.
+[[nodiscard]] Sweep sweep_counts(const WeightedPoints& points, const SweepOptions& options);
+
+}  // namespace tincture

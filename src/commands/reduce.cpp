@@ -1,0 +1,197 @@
+#include "commands/reduce.h"
+
+#include <algorithm>
+#include <iostream>
+
+#include "choose/measure.h"
+#include "choose/proposal.h"
+#include "cluster/sweep.h"
+#include "colour/picture_space.h"
+#include "commands/progress_bar.h"
+#include "commands/summary.h"
+#include "histogram/colour_table.h"
+#include "histogram/weighted_points.h"
+#include "label/label_map.h"
+#include "output/curve_csv.h"
+#include "output/curve_svg.h"
+#include "output/output_set.h"
+#include "output/study_json.h"
+#include "output/swatch_csv.h"
+#include "output/swatch_sheet.h"
+#include "output/swatch_tokens.h"
+#include "palette/written_colours.h"
+#include "picture/read.h"
+#include "picture/write_indexed_png.h"
+#include "support/error.h"
+#include "support/parallel.h"
+#include "support/text.h"
+#include "support/version.h"
+
+namespace tincture {
+namespace {
+
+// The sweep reaches at least this far, so that a knee does not move with the range asked for.
+constexpr int shortest_sweep = 24;
+
+OutputPlan output_plan(const ReduceOptions& options) {
+    OutputPlan plan;
+    plan.folder = options.common.out
+                      ? *options.common.out
+                      : std::filesystem::path(options.picture.stem().string() + "-tincture");
+    plan.names = {"reduced.png",          "swatches.csv", "swatches.svg", "swatches.png",
+                  "swatches.tokens.json", "curve.csv",    "curve.svg",    "study.json"};
+    plan.inputs = {options.picture};
+    if (options.profile) plan.inputs.push_back(*options.profile);
+    plan.command = "reduce";
+    plan.version = tincture_version;
+    plan.force = options.common.force;
+    return plan;
+}
+
+PictureFacts facts_of(const Picture& picture, const ColourSpace& space, const ColourTable& table) {
+    PictureFacts facts;
+    facts.file = valid_utf8(picture.file_name);
+    facts.width = picture.width;
+    facts.height = picture.height;
+    facts.channels = channel_count(picture.model);
+    facts.bits = picture.bits;
+    if (!space.is_standard()) facts.profile = valid_utf8(space.description());
+    facts.resolution = picture.resolution;
+    facts.opaque_pixels = table.opaque_pixels;
+    facts.distinct_colours = table.size();
+    if (table.cell_de > 0) facts.colour_cell_de = table.cell_de;
+    return facts;
+}
+
+ColourTable count_opaque_colours(const Picture& picture, const ColourSpace& space,
+                                 const std::string& subject) {
+    ColourTable table = count_colours(picture, space);
+    if (table.size() == 0) {
+        throw Error(ErrorKind::input, subject,
+                    "is transparent everywhere: there is no colour to find; give it a background");
+    }
+    return table;
+}
+
+// The kept colours as centres, each once and as it will be written.
+Centres kept_centres(const std::vector<ColourText>& keep, const ColourSpace& space) {
+    const ColourSpace srgb = ColourSpace::standard(ColourModel::rgb);
+    std::vector<Lab> wanted;
+    for (const ColourText& colour : keep) {
+        const Rgb8* rgb = std::get_if<Rgb8>(&colour);
+        const Lab lab = rgb != nullptr ? srgb.lab_of(*rgb) : std::get<Lab>(colour);
+        const auto same = [&](const Lab& other) {
+            return other.L == lab.L && other.a == lab.a && other.b == lab.b;
+        };
+        if (std::none_of(wanted.begin(), wanted.end(), same)) wanted.push_back(lab);
+    }
+    Centres centres;
+    for (const Rgb8 colour : written_colours(wanted, space)) {
+        const Lab lab = space.lab_of(colour);
+        centres.x.insert(centres.x.end(), {static_cast<float>(lab.L), static_cast<float>(lab.a),
+                                           static_cast<float>(lab.b)});
+        ++centres.count;
+    }
+    return centres;
+}
+
+SweepOptions sweep_options(const ChoosingOptions& choosing, Centres kept, ProgressBar& progress) {
+    SweepOptions options;
+    options.max_count = std::max(shortest_sweep, choosing.at_most) + 1;
+    options.extra_count =
+        choosing.count && *choosing.count > options.max_count ? *choosing.count : 0;
+    options.kept = std::move(kept);
+    options.progress = [&progress](double part) { progress.part(part); };
+    return options;
+}
+
+void stage_files(OutputSet& files, const Study& study, const IndexedPicture& reduced,
+                 const std::string& json) {
+    files.write("reduced.png",
+                [&](const std::filesystem::path& path) { write_indexed_png(path, reduced); });
+    files.add("swatches.csv", swatch_csv(study));
+    files.add("swatches.svg", swatches_svg(study));
+    const std::vector<std::uint8_t> chips = swatches_png(study);
+    files.add("swatches.png", {reinterpret_cast<const char*>(chips.data()), chips.size()});
+    files.add("swatches.tokens.json", swatch_tokens(study));
+    files.add("curve.csv", curve_csv(study));
+    files.add("curve.svg", curve_svg(study));
+    files.add("study.json", json);
+}
+
+// The palette as written, with one more colour for what is transparent.
+std::vector<Rgb8> written_palette(const Palette& palette, bool transparency) {
+    std::vector<Rgb8> colours;
+    for (const Swatch& swatch : palette.swatches) colours.push_back(swatch.written);
+    if (transparency) colours.push_back({});
+    return colours;
+}
+
+// The count to use, which is at most what the picture holds.
+void settle_count(Study& study, const std::optional<int>& asked, bool transparency) {
+    study.count_was_given = asked.has_value();
+    study.count = std::min(asked.value_or(study.proposal.count), study.curve.back().count);
+    study.count = std::max(study.count, study.curve.front().count);
+    if (study.count > 255 && transparency) {
+        throw Error(ErrorKind::usage, "",
+                    "--count 256: transparency takes one place of 256 here; give at most 255");
+    }
+}
+
+}  // namespace
+
+void run_reduce(const ReduceOptions& options, const Terminal& terminal) {
+    set_thread_count(options.common.threads);
+    OutputSet files(output_plan(options));
+    ProgressBar progress(terminal.progress && !options.common.quiet);
+    const std::string subject = options.picture.string();
+
+    progress.stage("reading", 0, 0.3);
+    const Picture picture = read_picture(options.picture, {options.max_pixels});
+    const ColourSpace space = picture_space(picture, subject, options.profile);
+    const ColourSpace written = written_space(picture, subject, options.profile);
+
+    progress.stage("counting colours", 0.3, 0.4);
+    const ColourTable table = count_opaque_colours(picture, space, subject);
+    Study study;
+    study.picture = facts_of(picture, space, table);
+    study.tolerance = options.choosing.tolerance;
+    study.at_least = options.choosing.at_least;
+    study.at_most = options.choosing.at_most;
+
+    progress.stage("clustering", 0.4, 0.8);
+    const Sweep sweep = sweep_counts(
+        points_of(table),
+        sweep_options(options.choosing, kept_centres(options.choosing.keep, written), progress));
+
+    progress.stage("measuring", 0.8, 0.9);
+    measure_curve(study, table, sweep, written);
+    study.proposal = propose(study);
+    settle_count(study, options.choosing.count, !picture.opaque.empty());
+
+    progress.stage("writing", 0.9, 1);
+    const Palette& palette = palette_at(study, study.count);
+    const Samples<std::uint8_t> labels = label_pixels(picture, table, space, palette);
+    const std::vector<std::uint64_t> pixels = count_labels(labels, study.count);
+    for (const std::uint64_t n : pixels) {
+        study.labels.shares.push_back(static_cast<double>(n) /
+                                      static_cast<double>(table.opaque_pixels));
+    }
+    const bool transparency = !picture.opaque.empty();
+    const std::vector<Rgb8> colours = written_palette(palette, transparency);
+    IndexedPicture reduced{picture.width, picture.height, labels.data(),     colours,
+                           std::nullopt,  written.icc(),  picture.resolution};
+    if (transparency) reduced.transparent_index = static_cast<std::uint8_t>(study.count);
+    const std::string json = study_json(study, tincture_version);
+    stage_files(files, study, reduced, json);
+    files.commit();
+    progress.clear();
+
+    if (options.common.json) {
+        std::cout << json;
+    } else if (!options.common.quiet) {
+        std::cout << summary(study, terminal, output_plan(options).folder.string());
+    }
+}
+
+}  // namespace tincture

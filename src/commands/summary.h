@@ -1,0 +1,15 @@
+#pragma once
+
+#include <string>
+
+#include "choose/study.h"
+#include "commands/terminal.h"
+
+namespace tincture {
+
+// What a person reads at the end of a run: picture, proposal, swatches, the counts with their error
+// as bars, and where the files are.
+[[nodiscard]] std::string summary(const Study& study, const Terminal& terminal,
+                                  const std::string& folder);
+
+}  // namespace tincture

@@ -1,0 +1,184 @@
+#include "histogram/colour_counts.h"
+
+#include <algorithm>
+#include <array>
+#include <bit>
+
+#include "histogram/colour_table.h"
+#include "support/cancel.h"
+#include "support/parallel.h"
+
+namespace tincture {
+namespace {
+
+constexpr std::uint64_t free_place = ~std::uint64_t{0};
+
+// Pictures below this size are counted in a hash table, which is small, and not in one place for
+// each of the 2^24 colours, which is quick once filled but must be walked through afterwards.
+constexpr std::size_t direct_from_pixels = 2'000'000;
+
+// Calls run(key, n) for each run of equal neighbours among the opaque pixels [begin, end).
+template <typename Sample, typename Run>
+void for_each_run(const Picture& picture, const Sample* samples, std::size_t begin, std::size_t end,
+                  const Run& run) {
+    const int channels = channel_count(picture.model);
+    const std::uint8_t* opaque = picture.opaque.empty() ? nullptr : picture.opaque.data();
+    std::uint64_t last = free_place;
+    std::uint64_t length = 0;
+    for (std::size_t i = begin; i < end; ++i) {
+        if (opaque != nullptr && opaque[i] == 0) continue;
+        const std::uint64_t key =
+            colour_key(samples + i * static_cast<std::size_t>(channels), channels);
+        if (key == last) {
+            ++length;
+            continue;
+        }
+        if (length > 0) run(last, length);
+        last = key;
+        length = 1;
+    }
+    if (length > 0) run(last, length);
+}
+
+// Cuts [0, n) into stripes of whole rows' size; few, so that what each needs stays small.
+struct Stripes {
+    std::size_t n;
+    std::size_t count;
+    [[nodiscard]] std::size_t begin(std::size_t s) const { return n * s / count; }
+};
+
+template <typename Sample>
+CountedColours count_hashed(const Picture& picture, const Sample* samples, std::size_t limit) {
+    const Stripes stripes{picture.pixel_count(), picture.pixel_count() < direct_from_pixels
+                                                     ? std::size_t{1}
+                                                     : std::size_t{2}};
+    std::vector<KeyCounter> counters(stripes.count);
+    parallel_for(stripes.count, [&](std::size_t s) {
+        constexpr std::size_t step = 1 << 16;
+        for (std::size_t at = stripes.begin(s); at < stripes.begin(s + 1); at += step) {
+            throw_if_cancelled();
+            if (counters[s].size() > limit) return;
+            for_each_run(picture, samples, at, std::min(at + step, stripes.begin(s + 1)),
+                         [&](std::uint64_t key, std::uint64_t n) { counters[s].add(key, n); });
+        }
+    });
+    KeyCounter& all = counters.front();
+    for (std::size_t s = 1; s < stripes.count && all.size() <= limit; ++s) {
+        for (const ColourCount& colour : counters[s].sorted()) all.add(colour.key, colour.count);
+    }
+    if (all.size() > limit) return {{}, true};
+    return {all.sorted(), false};
+}
+
+// One place for each 24-bit colour, ordered so that colours which differ little lie close together:
+// the two low bits of each channel come last. A photograph then touches a quarter of the cache
+// lines.
+struct DirectTable {
+    static constexpr std::size_t size = std::size_t{1} << 24;
+    std::vector<std::uint32_t> places = std::vector<std::uint32_t>(size, 0);
+
+    static std::uint32_t place(std::uint32_t r, std::uint32_t g, std::uint32_t b) {
+        return (r >> 2) << 18 | (g >> 2) << 12 | (b >> 2) << 6 | (r & 3) << 4 | (g & 3) << 2 |
+               (b & 3);
+    }
+
+    void add(const Picture& picture, std::size_t begin, std::size_t end) {
+        const std::uint8_t* s = picture.samples8.data() + 3 * begin;
+        if (picture.opaque.empty()) {
+            for (std::size_t i = begin; i < end; ++i, s += 3) ++places[place(s[0], s[1], s[2])];
+        } else {
+            const std::uint8_t* opaque = picture.opaque.data();
+            for (std::size_t i = begin; i < end; ++i, s += 3) {
+                places[place(s[0], s[1], s[2])] += opaque[i];
+            }
+        }
+    }
+};
+
+std::vector<ColourCount> sorted_colours(const DirectTable& table) {
+    constexpr std::size_t parts = 64;  // by the six high bits of red: already in order
+    std::array<std::vector<ColourCount>, parts> found;
+    parallel_for(parts, [&](std::size_t part) {
+        const std::size_t first = part << 18;
+        for (std::size_t low_red = 0; low_red < 4; ++low_red) {
+            for (std::size_t place = first; place < first + (std::size_t{1} << 18); place += 16) {
+                if ((place >> 4 & 3) != low_red) continue;
+                for (std::size_t p = place; p < place + 16; ++p) {
+                    if (table.places[p] == 0) continue;
+                    const std::uint64_t r = (p >> 18) << 2 | (p >> 4 & 3);
+                    const std::uint64_t g = (p >> 12 & 63) << 2 | (p >> 2 & 3);
+                    const std::uint64_t b = (p >> 6 & 63) << 2 | (p & 3);
+                    found[part].push_back({r << 32 | g << 16 | b, table.places[p]});
+                }
+            }
+        }
+        std::sort(found[part].begin(), found[part].end(),
+                  [](const ColourCount& one, const ColourCount& two) { return one.key < two.key; });
+    });
+    std::vector<ColourCount> colours;
+    for (const auto& part : found) colours.insert(colours.end(), part.begin(), part.end());
+    return colours;
+}
+
+CountedColours count_direct(const Picture& picture, std::size_t limit) {
+    DirectTable table;
+    constexpr std::size_t step = 1 << 20;
+    for (std::size_t at = 0; at < picture.pixel_count(); at += step) {
+        throw_if_cancelled();
+        table.add(picture, at, std::min(at + step, picture.pixel_count()));
+    }
+    CountedColours counted{sorted_colours(table), false};
+    if (counted.colours.size() > limit) return {{}, true};
+    return counted;
+}
+
+}  // namespace
+
+KeyCounter::KeyCounter() : places_(1 << 12, ColourCount{free_place, 0}), shift_(64 - 12) {}
+
+void KeyCounter::add(std::uint64_t key, std::uint64_t count) {
+    const std::size_t mask = places_.size() - 1;
+    // Multiplicative hashing with the golden ratio, high bits.
+    for (std::size_t at = key * 0x9E3779B97F4A7C15U >> shift_;; at = (at + 1) & mask) {
+        ColourCount& place = places_[at];
+        if (place.key == key) {
+            place.count += count;
+            return;
+        }
+        if (place.key == free_place) {
+            place = {key, count};
+            if (++size_ * 2 > places_.size()) grow();
+            return;
+        }
+    }
+}
+
+void KeyCounter::grow() {
+    std::vector<ColourCount> old(places_.size() * 2, ColourCount{free_place, 0});
+    old.swap(places_);
+    --shift_;
+    size_ = 0;
+    for (const ColourCount& place : old) {
+        if (place.key != free_place) add(place.key, place.count);
+    }
+}
+
+std::vector<ColourCount> KeyCounter::sorted() const {
+    std::vector<ColourCount> colours;
+    colours.reserve(size_);
+    std::copy_if(places_.begin(), places_.end(), std::back_inserter(colours),
+                 [](const ColourCount& place) { return place.key != free_place; });
+    std::sort(colours.begin(), colours.end(),
+              [](const ColourCount& one, const ColourCount& two) { return one.key < two.key; });
+    return colours;
+}
+
+CountedColours count_keys(const Picture& picture, std::size_t limit) {
+    if (picture.bits == 16) return count_hashed(picture, picture.samples16.data(), limit);
+    if (picture.model == ColourModel::rgb && picture.pixel_count() >= direct_from_pixels) {
+        return count_direct(picture, limit);
+    }
+    return count_hashed(picture, picture.samples8.data(), limit);
+}
+
+}  // namespace tincture

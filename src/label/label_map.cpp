@@ -1,0 +1,181 @@
+#include "label/label_map.h"
+
+#include <algorithm>
+#include <array>
+#include <bit>
+
+#include "cluster/nearest.h"
+#include "histogram/lab_cells.h"
+#include "support/cancel.h"
+#include "support/parallel.h"
+
+namespace tincture {
+namespace {
+
+// Pictures are labelled in stripes of this many pixels.
+constexpr std::size_t stripe_size = 1 << 18;
+
+// Below this many pixels a table of all 24-bit colours costs more than it saves.
+constexpr std::size_t direct_from_pixels = 1'000'000;
+
+Centres centres_of(const Palette& palette) {
+    Centres centres{3, palette.count, {}};
+    for (const Swatch& swatch : palette.swatches) {
+        centres.x.insert(centres.x.end(),
+                         {static_cast<float>(swatch.lab.L), static_cast<float>(swatch.lab.a),
+                          static_cast<float>(swatch.lab.b)});
+    }
+    return centres;
+}
+
+// Labels of Lab colours.
+std::vector<std::uint16_t> labels_of(const std::array<const float*, 3>& lab, std::size_t n,
+                                     const Centres& centres) {
+    std::vector<std::uint16_t> label(n);
+    constexpr std::size_t block_size = 8192;
+    parallel_for((n + block_size - 1) / block_size, [&](std::size_t block) {
+        const std::size_t start = block * block_size;
+        const std::size_t size = std::min(block_size, n - start);
+        const std::array<const float*, 3> plane = {lab[0] + start, lab[1] + start, lab[2] + start};
+        std::vector<float> squared(size);
+        nearest_centres({plane.data(), 3, size}, centres, label.data() + start, squared.data());
+    });
+    return label;
+}
+
+// Calls label_run(begin, end) for all stripes of the picture, in parallel.
+template <typename Run>
+void for_each_stripe(std::size_t pixels, const Run& label_run) {
+    parallel_for((pixels + stripe_size - 1) / stripe_size, [&](std::size_t stripe) {
+        throw_if_cancelled();
+        label_run(stripe * stripe_size, std::min(pixels, (stripe + 1) * stripe_size));
+    });
+}
+
+// One place for each 24-bit colour.
+void label_by_place(const Picture& picture, const ColourTable& table,
+                    const std::vector<std::uint16_t>& label, std::uint8_t* out) {
+    const auto place = [](std::uint32_t r, std::uint32_t g, std::uint32_t b) {
+        return r << 16 | g << 8 | b;
+    };
+    std::vector<std::uint8_t> label_at(std::size_t{1} << 24);
+    for (std::size_t i = 0; i < table.size(); ++i) {
+        const std::uint64_t key = table.key[i];
+        label_at[place(key >> 32 & 0xFF, key >> 16 & 0xFF, key & 0xFF)] =
+            static_cast<std::uint8_t>(label[i]);
+    }
+    for_each_stripe(picture.pixel_count(), [&](std::size_t begin, std::size_t end) {
+        const std::uint8_t* s = picture.samples8.data() + 3 * begin;
+        for (std::size_t i = begin; i < end; ++i, s += 3)
+            out[i] = label_at[place(s[0], s[1], s[2])];
+    });
+}
+
+// Keys of a table to labels, by open addressing in a table at most half full.
+class LabelOfKey {
+  public:
+    LabelOfKey(const ColourTable& table, const std::vector<std::uint16_t>& label)
+        : bits_(static_cast<int>(std::bit_width(table.size() * 2))),
+          places_(std::size_t{1} << bits_, Place{~0ULL, 0}) {
+        for (std::size_t i = 0; i < table.size(); ++i) {
+            std::size_t at = start(table.key[i]);
+            while (places_[at].key != ~0ULL) at = next(at);
+            places_[at] = {table.key[i], static_cast<std::uint8_t>(label[i])};
+        }
+    }
+
+    // 0 for a key that is not in the table: only pixels that are not opaque have one.
+    [[nodiscard]] std::uint8_t operator[](std::uint64_t key) const {
+        for (std::size_t at = start(key);; at = next(at)) {
+            if (places_[at].key == key) return places_[at].label;
+            if (places_[at].key == ~0ULL) return 0;
+        }
+    }
+
+  private:
+    struct Place {
+        std::uint64_t key;
+        std::uint8_t label;
+    };
+    [[nodiscard]] std::size_t start(std::uint64_t key) const {
+        return key * 0x9E3779B97F4A7C15U >> (64 - bits_);
+    }
+    [[nodiscard]] std::size_t next(std::size_t at) const { return (at + 1) & (places_.size() - 1); }
+
+    int bits_;
+    std::vector<Place> places_;
+};
+
+template <typename Sample>
+void label_by_key(const Picture& picture, const Sample* samples, const LabelOfKey& label_of,
+                  std::uint8_t* out) {
+    const int channels = channel_count(picture.model);
+    for_each_stripe(picture.pixel_count(), [&](std::size_t begin, std::size_t end) {
+        std::uint64_t last_key = ~0ULL;
+        std::uint8_t last = 0;
+        for (std::size_t i = begin; i < end; ++i) {
+            const std::uint64_t key =
+                colour_key(samples + i * static_cast<std::size_t>(channels), channels);
+            if (key != last_key) {
+                last = label_of[key];
+                last_key = key;
+            }
+            out[i] = last;
+        }
+    });
+}
+
+// Where the table lists no colours, each pixel goes through the profile again.
+void label_by_lab(const Picture& picture, const ColourSpace& space, const Centres& centres,
+                  std::uint8_t* out) {
+    std::array<std::vector<float>, 3> lab;
+    for (std::vector<float>& plane : lab)
+        plane.resize(std::min(stripe_size, picture.pixel_count()));
+    for (std::size_t start = 0; start < picture.pixel_count(); start += stripe_size) {
+        throw_if_cancelled();
+        const std::size_t n = std::min(stripe_size, picture.pixel_count() - start);
+        picture_to_lab(picture, space, start, n, {lab[0].data(), lab[1].data(), lab[2].data()});
+        const std::vector<std::uint16_t> label =
+            labels_of({lab[0].data(), lab[1].data(), lab[2].data()}, n, centres);
+        std::transform(label.begin(), label.end(), out + start,
+                       [](std::uint16_t k) { return static_cast<std::uint8_t>(k); });
+    }
+}
+
+}  // namespace
+
+Samples<std::uint8_t> label_pixels(const Picture& picture, const ColourTable& table,
+                                   const ColourSpace& space, const Palette& palette) {
+    Samples<std::uint8_t> labels(picture.pixel_count());
+    const Centres centres = centres_of(palette);
+    if (table.cell_de > 0) {
+        label_by_lab(picture, space, centres, labels.data());
+    } else {
+        const std::vector<std::uint16_t> label =
+            labels_of({table.L.data(), table.a.data(), table.b.data()}, table.size(), centres);
+        if (picture.bits == 8 && picture.model == ColourModel::rgb &&
+            picture.pixel_count() >= direct_from_pixels) {
+            label_by_place(picture, table, label, labels.data());
+        } else if (picture.bits == 8) {
+            label_by_key(picture, picture.samples8.data(), LabelOfKey(table, label), labels.data());
+        } else {
+            label_by_key(picture, picture.samples16.data(), LabelOfKey(table, label),
+                         labels.data());
+        }
+    }
+    if (!picture.opaque.empty()) {
+        const auto transparent = static_cast<std::uint8_t>(palette.count);
+        for (std::size_t i = 0; i < labels.size(); ++i) {
+            if (picture.opaque[i] == 0) labels[i] = transparent;
+        }
+    }
+    return labels;
+}
+
+std::vector<std::uint64_t> count_labels(const Samples<std::uint8_t>& labels, int count) {
+    std::array<std::uint64_t, 256> found{};
+    for (std::size_t i = 0; i < labels.size(); ++i) ++found[labels[i]];
+    return {found.begin(), found.begin() + count};
+}
+
+}  // namespace tincture

@@ -1,0 +1,122 @@
+#include "output/study_json.h"
+
+#include <nlohmann/json.hpp>
+#include <optional>
+
+#include "colour/notation.h"
+#include "output/json_text.h"
+#include "support/format.h"
+
+namespace tincture {
+namespace {
+
+using Json = nlohmann::ordered_json;
+
+constexpr int kMse = 6;
+constexpr int kShare = 6;
+constexpr int kDe = 4;
+constexpr int kLab = 4;
+constexpr int kDpi = 3;
+
+template <typename Value>
+Json known(const std::optional<Value>& value) {
+    return value ? Json(*value) : Json(nullptr);
+}
+
+Json known(const std::optional<double>& value, int decimals) {
+    return value ? Json(rounded(*value, decimals)) : Json(nullptr);
+}
+
+Json picture_json(const PictureFacts& picture) {
+    Json json = {{"file", picture.file},
+                 {"width", picture.width},
+                 {"height", picture.height},
+                 {"channels", picture.channels},
+                 {"bits", picture.bits},
+                 {"profile", known(picture.profile)},
+                 {"dpi", nullptr},
+                 {"opaque_pixels", picture.opaque_pixels},
+                 {"distinct_colours", picture.distinct_colours}};
+    if (picture.resolution) {
+        json["dpi"] = {rounded(picture.resolution->x_dpi, kDpi),
+                       rounded(picture.resolution->y_dpi, kDpi)};
+    }
+    if (picture.colour_cell_de) json["colour_cell_de"] = rounded(*picture.colour_cell_de, kDe);
+    return json;
+}
+
+Json curve_json(const std::vector<CurvePoint>& curve) {
+    Json json = Json::array();
+    for (const CurvePoint& point : curve) {
+        json.push_back({{"count", point.count},
+                        {"evidence_mse", rounded(point.evidence_mse, kMse)},
+                        {"mse", rounded(point.mse, kMse)},
+                        {"mean_de00", rounded(point.mean_de00, kDe)},
+                        {"p95_de00", rounded(point.p95_de00, kDe)},
+                        {"max_de00", rounded(point.max_de00, kDe)},
+                        {"closest_pair_de00", known(point.closest_pair_de00, kDe)}});
+    }
+    return json;
+}
+
+Json proposal_json(const Proposal& proposal) {
+    Json votes = Json::array();
+    for (const Vote& vote : proposal.votes) {
+        votes.push_back(
+            {{"criterion", vote.criterion}, {"count", known(vote.count)}, {"reason", vote.reason}});
+    }
+    return {{"count", proposal.count},
+            {"range", Json::array({proposal.low, proposal.high})},
+            {"confidence", rounded(proposal.confidence, kDe)},
+            {"sentence", proposal.sentence},
+            {"votes", votes}};
+}
+
+Json swatch_json(const Swatch& swatch) {
+    Json json = {{"name", swatch.name}, {"hex", hex(swatch.srgb)}};
+    if (swatch.hex_de00) json["hex_de00"] = rounded(*swatch.hex_de00, kDe);
+    json["lab"] = Json::array(
+        {rounded(swatch.lab.L, kLab), rounded(swatch.lab.a, kLab), rounded(swatch.lab.b, kLab)});
+    json["share"] = rounded(swatch.share, kShare);
+    json["pixels"] = swatch.pixels;
+    if (swatch.kept) json["kept"] = true;
+    return json;
+}
+
+Json palettes_json(const std::vector<Palette>& palettes) {
+    Json json = Json::array();
+    for (const Palette& palette : palettes) {
+        Json colours = Json::array();
+        for (const Swatch& swatch : palette.swatches) colours.push_back(swatch_json(swatch));
+        json.push_back({{"count", palette.count}, {"colours", std::move(colours)}});
+    }
+    return json;
+}
+
+Json labels_json(const LabelFacts& labels) {
+    if (labels.shares.empty()) return nullptr;
+    Json shares = Json::array();
+    for (const double share : labels.shares) shares.push_back(rounded(share, kShare));
+    return {{"shares", std::move(shares)}, {"tidied_share", rounded(labels.tidied_share, kShare)}};
+}
+
+}  // namespace
+
+std::string study_json(const Study& study, std::string_view version) {
+    const Json json = {{"tincture", std::string(version)},
+                       {"picture", picture_json(study.picture)},
+                       {"evidence",
+                        {{"kind", known(study.evidence.kind)},
+                         {"flat_share", known(study.evidence.flat_share, kShare)},
+                         {"noise", known(study.evidence.noise, kDe)}}},
+                       {"tolerance", rounded(study.tolerance, kDe)},
+                       {"curve", curve_json(study.curve)},
+                       {"proposal", proposal_json(study.proposal)},
+                       {"count", study.count},
+                       {"count_was_given", study.count_was_given},
+                       {"labels", labels_json(study.labels)},
+                       {"palettes", palettes_json(study.palettes)}};
+    return json_text(json);
+}
+
+}  // namespace tincture

@@ -1,0 +1,12 @@
+// Elementary functions in plain arithmetic: a C library's differ in their last bit between
+// processors, which could turn a decision.
+#pragma once
+
+namespace tincture {
+
+// Natural logarithm of a positive finite x, within natural_log_error relative to the larger of 1
+// and the result.
+[[nodiscard]] double natural_log(double x);
+inline constexpr double natural_log_error = 1e-14;
+
+}  // namespace tincture

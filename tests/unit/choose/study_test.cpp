@@ -1,0 +1,19 @@
+#include "choose/study.h"
+
+#include <gtest/gtest.h>
+
+namespace tincture {
+namespace {
+
+TEST(Study, FindsByCount) {
+    Study study;
+    study.curve = {{.count = 1, .mse = 9}, {.count = 2, .mse = 4}, {.count = 40, .mse = 1}};
+    study.palettes = {{1, {}}, {2, {}}, {40, {}}};
+    EXPECT_EQ(curve_at(study, 40).mse, 1);
+    EXPECT_EQ(&palette_at(study, 2), &study.palettes[1]);
+    EXPECT_THROW((void)curve_at(study, 3), std::out_of_range);
+    EXPECT_THROW((void)palette_at(study, 0), std::out_of_range);
+}
+
+}  // namespace
+}  // namespace tincture
