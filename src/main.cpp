@@ -1,4 +1,6 @@
 // The only file that exits: turns errors into a line on standard error and an exit status.
+#include <malloc.h>
+
 #include <csignal>
 #include <iostream>
 #include <new>
@@ -30,6 +32,14 @@ void listen_for_signals() {
         action.sa_flags = static_cast<int>(SA_RESETHAND);
         sigaction(number, &action, nullptr);
     }
+    // A limit on file sizes is to end in a message, as any full disk.
+    std::signal(SIGXFSZ, SIG_IGN);
+}
+
+// Arrays of a few megabytes come and go in every step: kept, they are not cleared again and again.
+void keep_freed_memory() {
+    mallopt(M_MMAP_THRESHOLD, 32 << 20);
+    mallopt(M_TRIM_THRESHOLD, 64 << 20);
 }
 
 int fail(int status, const std::string& subject, const std::string& message) {
@@ -53,6 +63,7 @@ int run(int argc, char** argv) {
 
 int main(int argc, char** argv) {
     listen_for_signals();
+    keep_freed_memory();
     try {
         return run(argc, argv);
     } catch (const tincture::Error& error) {

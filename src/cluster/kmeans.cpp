@@ -31,18 +31,22 @@ void label_block(const WeightedPoints& points, const Centres& centres, std::size
                     labelled.squared_distance.data());
 }
 
-// The sums of one cluster side by side: weight, scatter, then a moment for each dimension.
+// The sums of one cluster side by side: weight, scatter, then a moment for each dimension. Where
+// `fixed_dims` is not 0 the compiler knows the number of dimensions and unrolls.
+template <std::size_t fixed_dims>
 void add_block(const WeightedPoints& points, const Labelled& labelled, std::size_t start,
                std::size_t size, double* sums) {
-    const auto dims = static_cast<std::size_t>(points.dims);
-    const std::size_t stride = dims + 2;
+    const std::size_t dims = fixed_dims > 0 ? fixed_dims : static_cast<std::size_t>(points.dims);
+    const std::size_t n = points.n;
+    const float* x = points.x.data() + start;
+    const double* weights = points.weight.data() + start;
     for (std::size_t i = 0; i < size; ++i) {
-        const double weight = points.weight[start + i];
-        double* sum = sums + labelled.label[i] * stride;
+        const double weight = weights[i];
+        double* sum = sums + labelled.label[i] * (dims + 2);
         sum[0] += weight;
         sum[1] += weight * static_cast<double>(labelled.squared_distance[i]);
         for (std::size_t d = 0; d < dims; ++d) {
-            sum[2 + d] += weight * static_cast<double>(points.x[d * points.n + start + i]);
+            sum[2 + d] += weight * static_cast<double>(x[d * n + i]);
         }
     }
 }
@@ -131,7 +135,8 @@ ClusterSums sum_clusters(const WeightedPoints& points, const Centres& centres) {
              start += block_size) {
             const std::size_t size = std::min(block_size, end - start);
             label_block(points, centres, start, size, labelled);
-            add_block(points, labelled, start, size, partial.data() + part * count * stride);
+            const auto add = points.dims == 3 ? add_block<3> : add_block<0>;
+            add(points, labelled, start, size, partial.data() + part * count * stride);
         }
     };
     if (parts == 1) {

@@ -37,7 +37,7 @@ double angle_near_zero(Direction d) {
     return 4 * atan_small(half_s / (1 + half_c));
 }
 
-// exp(-y) for 0 <= y <= 16: series for y / 256, squared eight times.
+// exp(-y) for 0 <= y <= 60: series for y / 256, squared eight times.
 double exp_negative(double y) {
     const double x = -y / 256;
     double power = 0;
@@ -55,18 +55,20 @@ double sin_small(double x) {
     return x * sum;
 }
 
-// The direction of the mean hue h_bar' and half of the chord between the two hues, |sin(dh' / 2)|.
+// The direction of the mean hue h_bar'.
 Direction mean_hue(Direction u1, Direction u2) {
     const Direction sum = {u1.c + u2.c, u1.s + u2.s};
     const double length = std::sqrt(square(sum.c) + square(sum.s));
-    if (length < 1e-9) {
-        // A half-turn apart: the mean of the two angles in 0..360 lies a quarter-turn past the one
-        // that is below a half-turn.
-        const bool first_is_lower = u1.s > 0 || (u1.s == 0 && u1.c > 0);
-        const Direction lower = first_is_lower ? u1 : u2;
-        return {-lower.s, lower.c};
-    }
-    return {sum.c / length, sum.s / length};
+    if (length > 1) return {sum.c / length, sum.s / length};
+    // Nearly opposite: the sum has lost digits, but it lies across the difference, which has not.
+    const Direction across = {u1.s - u2.s, u2.c - u1.c};
+    const double chord = std::sqrt(square(across.c) + square(across.s));
+    // A half-turn apart: the mean of the two angles in 0..360, which is 90 or more and below 270.
+    const bool half_turn = length < 1e-9;
+    const bool along = half_turn ? across.c < 0 || (across.c == 0 && across.s > 0)
+                                 : sum.c * across.c + sum.s * across.s > 0;
+    const double scale = (along ? 1 : -1) / chord;
+    return {scale * across.c, scale * across.s};
 }
 
 double weight_T(Direction h) {
@@ -83,17 +85,18 @@ double weight_T(Direction h) {
 }
 
 double rotation_R_T(Direction h, double C_bar_p) {
+    // The formula does not wrap h_bar' - 275: from 0 to 95 degrees it is below -180, and the
+    // rotation is nothing (below 1e-20).
+    if (h.s >= 0 && h.c > -0.0871557427476581736) return 0;
     // The mean hue less 275 degrees.
     const Direction d = {0.0871557427476581736 * h.c - 0.996194698091745532 * h.s,
                          0.0871557427476581736 * h.s + 0.996194698091745532 * h.c};
-    // Past a quarter-turn exp(-(90/25)^2) is 2e-6 and falling; the formula's value there moves a
-    // difference by less than 1e-5 of itself, but is computed all the same up to a half-turn.
     const double angle =
         d.c >= 0 ? angle_near_zero(d)
                  : std::copysign(3.14159265358979324, d.s) - angle_near_zero({-d.c, d.s});
     const double degrees_25 = 25 * 3.14159265358979324 / 180;
     const double y = square(angle / degrees_25);
-    const double delta_theta = 30 * 3.14159265358979324 / 180 * (y < 60 ? exp_negative(y) : 0);
+    const double delta_theta = 30 * 3.14159265358979324 / 180 * exp_negative(y);
     const double C7 = power_7(C_bar_p);
     const double R_C = 2 * std::sqrt(C7 / (C7 + 6103515625.0));  // 25^7
     return -sin_small(2 * delta_theta) * R_C;

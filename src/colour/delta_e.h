@@ -21,8 +21,9 @@ inline constexpr double delta_e_2000_error = 1e-9;
 
 // CIEDE2000 of n colours, each against the reference that `label` gives it; written to `out`. In
 // single precision with vectors: the same bits for every instruction set. Within
-// delta_e_2000_batch_error of delta_e_2000() for L in 0..100, |a| and |b| up to 128, but for
-// differences above 1 between hues within 1e-5 of a half-turn apart, where the formula jumps.
+// delta_e_2000_batch_error of delta_e_2000() for L in 0..100, |a| and |b| up to 128, but for hues
+// within 2e-6 of a half-turn apart and mean hues within 2e-6 of zero (in radians): the formula
+// jumps there.
 struct LabelledColours {
     const float* L;
     const float* a;
@@ -37,6 +38,6 @@ struct ReferenceColours {
 };
 void delta_e_2000_batch(const LabelledColours& colours, const ReferenceColours& references,
                         float* out);
-inline constexpr double delta_e_2000_batch_error = 1e-3;
+inline constexpr double delta_e_2000_batch_error = 1e-4;
 
 }  // namespace tincture

@@ -42,17 +42,24 @@ HWY_INLINE Directions unit(V a, V b, V C) {
 }
 
 HWY_INLINE Directions mean_hue(Directions u1, Directions u2, V C1, V C2) {
+    const V zero = constant(0);
     const V c = hn::Add(u1.c, u2.c);
     const V s = hn::Add(u1.s, u2.s);
     const V length = hn::Sqrt(hn::Add(square(c), square(s)));
+    // Nearly opposite hues go by what lies across their difference; see delta_e.cpp.
+    const V across_c = hn::Sub(u1.s, u2.s);
+    const V across_s = hn::Sub(u2.c, u1.c);
+    const V chord = hn::Sqrt(hn::Add(square(across_c), square(across_s)));
     const auto half_turn = hn::Lt(length, constant(1e-6F));
-    const V safe = hn::IfThenElse(half_turn, constant(1), length);
-    const auto first_is_lower = hn::Or(
-        hn::Gt(u1.s, constant(0)), hn::And(hn::Eq(u1.s, constant(0)), hn::Gt(u1.c, constant(0))));
-    const V lower_c = hn::IfThenElse(first_is_lower, u1.c, u2.c);
-    const V lower_s = hn::IfThenElse(first_is_lower, u1.s, u2.s);
-    Directions h = {hn::IfThenElse(half_turn, hn::Neg(lower_s), hn::Div(c, safe)),
-                    hn::IfThenElse(half_turn, lower_c, hn::Div(s, safe))};
+    const auto half_turn_along =
+        hn::Or(hn::Lt(across_c, zero), hn::And(hn::Eq(across_c, zero), hn::Gt(across_s, zero)));
+    const auto sum_along = hn::Gt(hn::Add(hn::Mul(c, across_c), hn::Mul(s, across_s)), zero);
+    const auto along =
+        hn::Or(hn::And(half_turn, half_turn_along), hn::AndNot(half_turn, sum_along));
+    const V scale = hn::Div(hn::IfThenElse(along, constant(1), constant(-1)), chord);
+    const auto by_sum = hn::Gt(length, constant(1));
+    Directions h = {hn::IfThenElse(by_sum, hn::Div(c, length), hn::Mul(scale, across_c)),
+                    hn::IfThenElse(by_sum, hn::Div(s, length), hn::Mul(scale, across_s))};
     // Where one colour has no chroma the hue of the other serves.
     const auto no_1 = hn::Le(C1, constant(0));
     const auto no_2 = hn::Le(C2, constant(0));
@@ -111,7 +118,10 @@ HWY_INLINE V rotation_R_T(Directions h, V C_bar_p) {
     const V sin_85 = constant(0.9961947F);
     const Directions d = {hn::Sub(hn::Mul(cos_275, h.c), hn::Mul(sin_85, h.s)),
                           hn::Add(hn::Mul(cos_275, h.s), hn::Mul(sin_85, h.c))};
-    const V angle = hn::Mul(constant(1.0471976F), bell_25(d));  // 2 * 30 degrees
+    // Nothing from 0 to 95 degrees; see delta_e.cpp.
+    const auto none = hn::And(hn::Ge(h.s, constant(0)), hn::Gt(h.c, constant(-0.08715574F)));
+    const V bell = hn::IfThenElse(none, constant(0), bell_25(d));
+    const V angle = hn::Mul(constant(1.0471976F), bell);  // 2 * 30 degrees
     const V x2 = square(angle);
     // sin by its Taylor series to x^9; |x| <= 1.05 leaves less than 5e-8.
     V sine = constant(1);

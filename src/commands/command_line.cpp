@@ -5,6 +5,7 @@
 #include <charconv>
 #include <cmath>
 
+#include "commands/text_layout.h"
 #include "support/error.h"
 #include "support/text.h"
 #include "support/version.h"
@@ -38,40 +39,51 @@ double positive_number(const std::string& option, const std::string& text, doubl
     return value;
 }
 
+// An empty name is a variable that a script forgot to set.
+std::filesystem::path file_name(const std::string& option, const std::string& text) {
+    if (text.empty()) refuse(option + " is empty: give a name");
+    return text;
+}
+
 // Values as they were typed: CLI11 sorts them, the functions above judge them.
 struct Typed {
-    std::string picture, out, threads, count, at_least, at_most, tolerance, profile, max_pixels;
+    std::string picture;
+    std::optional<std::string> out, threads, count, at_least, at_most, tolerance, profile,
+        max_pixels;
     std::vector<std::string> keep;
     CommonOptions common;  // only its flags
 };
 
 void add_common_options(CLI::App& command, Typed& typed) {
-    command.add_option("--out", typed.out, "Folder for the files")
-        ->type_name("DIR")
-        ->option_text("DIR (default: the picture's name with -tincture, in the current folder)");
+    command
+        .add_option("--out", typed.out,
+                    "Folder for the files; default: the picture's name with -tincture, in the "
+                    "current folder")
+        ->option_text("DIR");
     command.add_flag("--force", typed.common.force,
                      "Overwrite, and remove what an earlier run wrote there");
     command.add_flag("--json", typed.common.json, "Print study.json instead of the summary");
     command.add_flag("--quiet", typed.common.quiet, "Print nothing, show no progress");
-    command.add_option("--threads", typed.threads, "How many processors to use")
-        ->option_text("N (default: all)");
+    command.add_option("--threads", typed.threads, "How many processors to use; default: all")
+        ->option_text("N");
 }
 
 void add_choosing_options(CLI::App& command, Typed& typed) {
     command.add_option("--count", typed.count, "Use this many colours; the proposal is still made")
         ->option_text("N");
-    command.add_option("--at-least", typed.at_least, "Fewest colours to propose")
-        ->option_text("N (default: 2)");
-    command.add_option("--at-most", typed.at_most, "Most colours to propose, at most 256")
-        ->option_text("N (default: 24)");
+    command.add_option("--at-least", typed.at_least, "Fewest colours to propose; default: 2")
+        ->option_text("N");
+    command
+        .add_option("--at-most", typed.at_most, "Most colours to propose, at most 256; default: 24")
+        ->option_text("N");
     command
         .add_option("--tolerance", typed.tolerance,
-                    "CIEDE2000 difference that 95 % of the pixels should stay within")
-        ->option_text("DE00 (default: 3)");
+                    "CIEDE2000 difference that 95 % of the pixels should stay within; default: 3")
+        ->option_text("DE00");
     command
         .add_option("--keep", typed.keep,
-                    "A colour that must be in the palette, as #rrggbb, \"lab(L a b)\" (D50) or a "
-                    "CSS name; may be repeated")
+                    "A colour that must be in the palette: #rrggbb, a CSS name or "
+                    "\"lab(L a b)\" (D50); may be repeated")
         ->option_text("COLOUR")
         ->take_all()
         ->expected(1);
@@ -79,9 +91,9 @@ void add_choosing_options(CLI::App& command, Typed& typed) {
 
 CommonOptions common_options(const Typed& typed) {
     CommonOptions options = typed.common;
-    if (!typed.out.empty()) options.out = typed.out;
-    if (!typed.threads.empty()) {
-        options.threads = static_cast<int>(whole_number("--threads", typed.threads, 1, 1024));
+    if (typed.out) options.out = file_name("--out", *typed.out);
+    if (typed.threads) {
+        options.threads = static_cast<int>(whole_number("--threads", *typed.threads, 1, 1024));
     }
     return options;
 }
@@ -91,18 +103,18 @@ ChoosingOptions choosing_options(const Typed& typed) {
     const auto count = [](const char* option, const std::string& text) {
         return static_cast<int>(whole_number(option, text, 1, 256));
     };
-    if (!typed.count.empty()) options.count = count("--count", typed.count);
-    if (!typed.at_least.empty()) options.at_least = count("--at-least", typed.at_least);
-    if (!typed.at_most.empty()) options.at_most = count("--at-most", typed.at_most);
+    if (typed.count) options.count = count("--count", *typed.count);
+    if (typed.at_least) options.at_least = count("--at-least", *typed.at_least);
+    if (typed.at_most) options.at_most = count("--at-most", *typed.at_most);
     // Asking for one end alone moves the default of the other out of the way.
-    if (typed.at_most.empty()) options.at_most = std::max(options.at_most, options.at_least);
-    if (typed.at_least.empty()) options.at_least = std::min(options.at_least, options.at_most);
+    if (!typed.at_most) options.at_most = std::max(options.at_most, options.at_least);
+    if (!typed.at_least) options.at_least = std::min(options.at_least, options.at_most);
     if (options.at_least > options.at_most) {
         refuse("--at-least " + std::to_string(options.at_least) + " is above --at-most " +
                std::to_string(options.at_most) + ": give a range that rises");
     }
-    if (!typed.tolerance.empty()) {
-        options.tolerance = positive_number("--tolerance", typed.tolerance, 100);
+    if (typed.tolerance) {
+        options.tolerance = positive_number("--tolerance", *typed.tolerance, 100);
     }
     for (const std::string& text : typed.keep) options.keep.push_back(parse_colour(text));
     const int most = options.count.value_or(options.at_most);
@@ -119,12 +131,40 @@ ReduceOptions reduce_options(const Typed& typed) {
     options.common = common_options(typed);
     options.choosing = choosing_options(typed);
     options.picture = typed.picture;
-    if (!typed.profile.empty()) options.profile = typed.profile;
-    if (!typed.max_pixels.empty()) {
-        options.max_pixels = whole_number("--max-pixels", typed.max_pixels, 1, 4'000'000'000);
+    if (typed.profile) options.profile = file_name("--profile", *typed.profile);
+    if (typed.max_pixels) {
+        options.max_pixels = whole_number("--max-pixels", *typed.max_pixels, 1, 4'000'000'000);
     }
     return options;
 }
+
+// Help for a window of 80 columns, with the command as it is typed.
+class HelpText : public CLI::Formatter {
+  public:
+    explicit HelpText(std::string usage) : usage_(std::move(usage)) {
+        label("Positionals", "Picture");
+    }
+
+    std::string make_usage(const CLI::App*, std::string) const override {
+        return "\nUsage: " + usage_ + "\n";
+    }
+    std::string make_option(const CLI::Option* option, bool is_positional) const override {
+        const std::string name = make_option_name(option, is_positional);
+        return entry(name + make_option_opts(option), make_option_desc(option));
+    }
+    std::string make_subcommand(const CLI::App* command) const override {
+        return entry(command->get_name(), command->get_description());
+    }
+
+  private:
+    static constexpr std::size_t margin = 20;
+    static constexpr std::size_t width = 80;
+
+    static std::string entry(const std::string& name, const std::string& description) {
+        return wrapped(flush_left("  " + name, margin), description, width, margin);
+    }
+    std::string usage_;
+};
 
 // A library's message on one line, with what the person typed made fit to be shown.
 std::string one_line(std::string message) {
@@ -143,11 +183,14 @@ CommandLine read_command_line(int argc, const char* const* argv) {
     bool version = false;
     app.add_flag("--version", version, "Print the version");
     app.set_help_flag("--help", "Print this help");
+    app.formatter(std::make_shared<HelpText>("tincture COMMAND [OPTIONS]"));
     app.footer("Each command has its own help: tincture reduce --help");
 
     Typed typed;
     CLI::App* reduce = app.add_subcommand("reduce", "How many colours, and the picture in them");
+    reduce->group("Commands");
     reduce->set_help_flag("--help", "Print this help");
+    reduce->formatter(std::make_shared<HelpText>("tincture reduce PICTURE [OPTIONS]"));
     reduce->add_option("PICTURE", typed.picture, "PNG, JPEG, TIFF, WebP, AVIF, BMP or PNM")
         ->option_text(" ");
     add_choosing_options(*reduce, typed);
@@ -155,11 +198,12 @@ CommandLine read_command_line(int argc, const char* const* argv) {
         ->add_option("--profile", typed.profile,
                      "ICC profile for a picture that has none; CMYK needs one")
         ->option_text("FILE");
-    reduce->add_option("--max-pixels", typed.max_pixels, "Refuse larger pictures")
-        ->option_text("N (default: 500000000)");
+    reduce
+        ->add_option("--max-pixels", typed.max_pixels,
+                     "Refuse pictures of more pixels; default: 500000000")
+        ->option_text("N");
     add_common_options(*reduce, typed);
-    reduce->footer(
-        "Screen colours are no proof: judge a printed proof under D50, and ask the printer.");
+    reduce->footer("A screen is no proof: judge colours on a printed one, under D50.");
 
     try {
         app.parse(argc, argv);

@@ -190,7 +190,8 @@ void run_reduce(const ReduceOptions& options, const Terminal& terminal) {
     if (options.common.json) {
         std::cout << json;
     } else if (!options.common.quiet) {
-        std::cout << summary(study, terminal, output_plan(options).folder.string());
+        std::cout << summary(study, options.choosing.count, terminal,
+                             output_plan(options).folder.string());
     }
 }
 

@@ -6,6 +6,7 @@
 
 #include "choose/criteria.h"
 #include "colour/notation.h"
+#include "commands/text_layout.h"
 #include "support/format.h"
 #include "support/maths.h"
 #include "support/text.h"
@@ -14,118 +15,134 @@ namespace tincture {
 namespace {
 
 constexpr std::size_t longest_list = 24;
-
-std::string padded(const std::string& text, std::size_t width) {
-    return text.size() < width ? std::string(width - text.size(), ' ') + text : text;
-}
-
-// 1234567 as 1,234,567.
-std::string grouped(std::uint64_t number) {
-    std::string text = std::to_string(number);
-    for (std::size_t at = text.size(); at > 3; at -= 3) text.insert(at - 3, ",");
-    return text;
-}
+constexpr std::size_t margin = 2;
+constexpr std::size_t mark_sign = 3;  // columns of what leads from a bar to its mark
 
 std::string styled(const std::string& text, const char* code, const Terminal& terminal) {
     return terminal.colour ? std::string("\x1b[") + code + "m" + text + "\x1b[0m" : text;
 }
-
-// Breaks text at spaces into lines that begin with two spaces.
-std::string wrapped(const std::string& text, int width) {
-    std::string out = "  ";
-    std::size_t column = 2;
-    for (std::size_t at = 0; at < text.size();) {
-        const std::size_t end = std::min(text.find(' ', at), text.size());
-        const std::size_t length = end - at;
-        if (column > 2 && column + 1 + length > static_cast<std::size_t>(width)) {
-            out += "\n  ";
-            column = 2;
-        } else if (column > 2) {
-            out += ' ';
-            ++column;
-        }
-        out.append(text, at, length);
-        column += length;
-        at = end + 1;
-    }
-    return out + "\n";
+std::string bold(const std::string& text, const Terminal& terminal) {
+    return styled(text, "1", terminal);
+}
+std::string faint(const std::string& text, const Terminal& terminal) {
+    return styled(text, "2", terminal);
 }
 
-std::string picture_line(const Study& study, const Terminal& terminal) {
+std::size_t width_of(const Terminal& terminal) {
+    return static_cast<std::size_t>(terminal.width);
+}
+
+// Whether there is room for what is of second importance.
+bool is_roomy(const Terminal& terminal) {
+    return terminal.width >= 68;
+}
+
+std::string paragraph(const std::string& text, const Terminal& terminal) {
+    return wrapped(std::string(margin, ' '), text, width_of(terminal), margin);
+}
+
+// A paragraph that steps back behind the figures.
+std::string remark(const std::string& text, const Terminal& terminal) {
+    std::string lines = paragraph(text, terminal);
+    lines.pop_back();
+    return faint(lines, terminal) + "\n";
+}
+
+std::string number_of_colours(int count) {
+    return std::to_string(count) + (count == 1 ? " colour" : " colours");
+}
+
+std::string picture_lines(const Study& study, const Terminal& terminal) {
     const PictureFacts& facts = study.picture;
     const char* model = facts.channels == 1 ? "grey" : facts.channels == 3 ? "RGB" : "CMYK";
-    std::string line = styled(shown(facts.file), "1", terminal) + "\n";
-    std::string rest = std::to_string(facts.width) + " x " + std::to_string(facts.height) +
+    std::string text = std::to_string(facts.width) + " x " + std::to_string(facts.height) +
                        " pixels, " + std::to_string(facts.bits) + "-bit " + model + ", ";
-    rest += facts.profile ? "profile " + shown(*facts.profile) : "no profile: taken as sRGB";
-    if (facts.resolution) rest += ", " + fixed(facts.resolution->x_dpi, 0) + " dpi";
-    rest += ", " + grouped(facts.distinct_colours) +
+    text += facts.profile ? "profile " + shown(*facts.profile) : "no profile: taken as sRGB";
+    if (facts.resolution) text += ", " + fixed(facts.resolution->x_dpi, 0) + " dpi";
+    text += ", " + grouped(facts.distinct_colours) +
             (facts.colour_cell_de
                  ? " cells of " + fixed(*facts.colour_cell_de, 2) + " dE of different colours"
              : facts.distinct_colours == 1 ? " colour"
                                            : " different colours");
-    return line + wrapped(rest, terminal.width);
+    return bold(shown(facts.file), terminal) + "\n" + paragraph(text, terminal);
 }
 
-std::string proposal_lines(const Study& study, const Terminal& terminal) {
+// Why the count is another than the proposed one; empty if it is not.
+std::string about_count(const Study& study, const std::optional<int>& asked) {
+    if (!asked) return "";
+    const std::string used = number_of_colours(study.count);
+    if (study.count == *asked) return used + ", as asked. ";
+    return number_of_colours(*asked) + " were asked for, but the picture has only " +
+           std::to_string(study.count) + ": " + used + (study.count == 1 ? " is" : " are") +
+           " used. ";
+}
+
+std::string proposal_lines(const Study& study, const std::optional<int>& asked,
+                           const Terminal& terminal) {
     const Proposal& proposal = study.proposal;
-    const std::string head = study.count_was_given
-                                 ? "Using " + std::to_string(study.count) + ", as asked; proposed: "
-                                 : "Proposed: ";
-    std::string text = wrapped(head + proposal.sentence, terminal.width);
+    const std::string before = about_count(study, asked);
+    std::string text = paragraph(before + "The proposal is " + proposal.sentence, terminal);
+    const std::string count = number_of_colours(asked ? study.count : proposal.count);
+    // Where a line ends within it, it stays plain.
+    const std::size_t at = text.find(count);
+    if (at != std::string::npos) text.replace(at, count.size(), bold(count, terminal));
+
     const std::string range =
         proposal.low == proposal.high
-            ? std::to_string(proposal.low)
+            ? "this one alone"
             : std::to_string(proposal.low) + " to " + std::to_string(proposal.high);
-    return text + wrapped("Defensible: " + range + ". Confidence " + fixed(proposal.confidence, 1) +
-                              ", a first guess.",
-                          terminal.width);
+    return text + paragraph("Counts that can be defended: " + range + ". Confidence: " +
+                                fixed(proposal.confidence, 1) + " of 1, a first guess.",
+                            terminal);
 }
 
 std::string chip(Rgb8 colour, const Terminal& terminal) {
     if (!terminal.colour) return "";
     return "\x1b[48;2;" + std::to_string(colour.r) + ";" + std::to_string(colour.g) + ";" +
-           std::to_string(colour.b) + "m      \x1b[0m  ";
+           std::to_string(colour.b) + "m" + std::string(is_roomy(terminal) ? 6 : 3, ' ') +
+           "\x1b[0m ";
+}
+
+std::string swatch_line(const Swatch& swatch, const Terminal& terminal) {
+    std::string figures =
+        flush_right(fixed(100 * swatch.share, 1), 5) + " %  " + hex(swatch.srgb) + "  ";
+    if (is_roomy(terminal)) {
+        for (const double value : {swatch.lab.L, swatch.lab.a, swatch.lab.b}) {
+            figures += flush_right(fixed(value, 1), 6) + "  ";
+        }
+    }
+    std::string name = swatch.name;
+    if (swatch.kept) name += " (kept)";
+    if (swatch.hex_de00) name += " (sRGB is off by " + fixed(*swatch.hex_de00, 1) + ")";
+    const std::size_t chip_width = !terminal.colour ? 0 : is_roomy(terminal) ? 7 : 4;
+    const std::size_t used = margin + chip_width;
+    // The chip has no width of its own in `wrapped`: its escape sequences are put in front.
+    return std::string(margin, ' ') + chip(swatch.srgb, terminal) +
+           wrapped(figures, name, width_of(terminal) - used, used + columns_of(figures));
 }
 
 std::string swatch_lines(const Study& study, const Terminal& terminal) {
     const Palette& palette = palette_at(study, study.count);
-    const std::string indent = terminal.colour ? "          " : "  ";
-    std::string text =
-        styled(indent + "  share  sRGB          L*      a*      b*  name", "2", terminal) + "\n";
-    std::size_t listed = 0;
-    for (const Swatch& swatch : palette.swatches) {
-        if (++listed > longest_list) {
-            text += "  and " + std::to_string(palette.swatches.size() - longest_list) +
-                    " more, in swatches.csv\n";
-            break;
-        }
-        text += "  " + chip(swatch.srgb, terminal) + padded(fixed(100 * swatch.share, 1), 5) +
-                " %  " + hex(swatch.srgb) + padded(fixed(swatch.lab.L, 1), 8) +
-                padded(fixed(swatch.lab.a, 1), 8) + padded(fixed(swatch.lab.b, 1), 8) + "  " +
-                swatch.name + (swatch.kept ? " (kept)" : "") + "\n";
+    std::string head(margin + (!terminal.colour ? 0 : is_roomy(terminal) ? 7 : 4), ' ');
+    head += "  share  sRGB     ";
+    if (is_roomy(terminal)) head += "    L*      a*      b*  ";
+    std::string text = faint(head + "name", terminal) + "\n";
+    const std::size_t listed = std::min(palette.swatches.size(), longest_list);
+    for (std::size_t i = 0; i < listed; ++i) text += swatch_line(palette.swatches[i], terminal);
+    if (listed < palette.swatches.size()) {
+        text += paragraph(
+            "and " + std::to_string(palette.swatches.size() - listed) + " more, in swatches.csv",
+            terminal);
     }
     return text;
-}
-
-// A bar of eighths of a column.
-std::string bar(double part, std::size_t width, const Terminal& terminal) {
-    const auto eighths =
-        static_cast<std::size_t>(std::lround(part * static_cast<double>(width) * 8));
-    if (!terminal.unicode) return std::string(eighths / 8, '#');
-    static constexpr const char* partial[] = {"", "▏", "▎", "▍", "▌", "▋", "▊", "▉"};
-    std::string text;
-    for (std::size_t i = 0; i < eighths / 8; ++i) text += "█";
-    return text + partial[eighths % 8];
 }
 
 // What is remarkable about a count.
 std::string marks(const Study& study, int count) {
     std::string text;
     const auto add = [&](const std::string& mark) { text += (text.empty() ? "" : ", ") + mark; };
-    if (count == study.count) add(study.count_was_given ? "used" : "proposed");
-    if (count == study.proposal.count && study.count_was_given && count != study.count)
-        add("proposed");
+    if (count == study.count && study.count_was_given) add("used");
+    if (count == study.proposal.count) add("proposed");
     for (const Vote& vote : study.proposal.votes) {
         if (vote.count == count) add(vote.criterion);
     }
@@ -152,44 +169,124 @@ std::vector<const CurvePoint*> listed_points(const Study& study) {
     return some;
 }
 
-std::string curve_lines(const Study& study, const Terminal& terminal) {
+struct CurveRow {
+    bool chosen = false;
+    std::string figures;
+    double part = 0;  // length of the bar, 0 to 1
+    std::string mark;
+};
+
+std::vector<CurveRow> curve_rows(const Study& study, const Terminal& terminal) {
     const std::vector<const CurvePoint*> points = listed_points(study);
     // Bars show the logarithm, as the knee is read from it; half a squared dE is the floor there.
-    const auto height = [](const CurvePoint& point) { return natural_log(point.mse + 0.5); };
-    double low = height(*points.front());
-    double high = low;
+    const auto height = [](const CurvePoint* point) { return natural_log(point->mse + 0.5); };
+    const auto lower = [&](const CurvePoint* one, const CurvePoint* two) {
+        return height(one) < height(two);
+    };
+    const auto [least, most] = std::minmax_element(points.begin(), points.end(), lower);
+    const double low = height(*least);
+    const double high = height(*most);
+    std::vector<CurveRow> rows;
     for (const CurvePoint* point : points) {
-        low = std::min(low, height(*point));
-        high = std::max(high, height(*point));
+        CurveRow row;
+        row.chosen = point->count == study.count;
+        row.figures = std::string(margin, ' ') + flush_right(std::to_string(point->count), 7) +
+                      flush_right(fixed(point->mean_de00, 2), 8) +
+                      flush_right(fixed(point->p95_de00, 1), 8) +
+                      flush_right(fixed(point->max_de00, 1), 8);
+        if (is_roomy(terminal)) {
+            row.figures += flush_right(fixed(std::sqrt(point->mse), 2), 11) + "   ";
+        }
+        row.part = high > low ? 0.06 + 0.94 * (height(point) - low) / (high - low) : 1;
+        row.mark = marks(study, point->count);
+        rows.push_back(std::move(row));
     }
-    std::string text =
-        styled("  count   RMS dE76   CIEDE2000 mean   95 %   worst", "2", terminal) + "\n";
-    for (const CurvePoint* point : points) {
-        const bool chosen = point->count == study.count;
-        const double part = high > low ? 0.06 + 0.94 * (height(*point) - low) / (high - low) : 1;
-        std::string line =
-            "  " + padded(std::to_string(point->count), 5) +
-            padded(fixed(std::sqrt(point->mse), 2), 11) + padded(fixed(point->mean_de00, 2), 17) +
-            padded(fixed(point->p95_de00, 1), 7) + padded(fixed(point->max_de00, 1), 8) + "  ";
-        line += bar(part, 16, terminal);
-        const std::string mark = marks(study, point->count);
-        if (!mark.empty()) line += (terminal.unicode ? "  ◂ " : "  < ") + mark;
-        text += (chosen ? styled(line, "1", terminal) : line) + "\n";
+    return rows;
+}
+
+// The longest bars that leave room for the marks behind them.
+std::size_t bar_width(const std::vector<CurveRow>& rows, const Terminal& terminal) {
+    constexpr double longest = 30;
+    constexpr double shortest = 8;
+    if (!is_roomy(terminal)) return 0;
+    double width = longest;
+    for (const CurveRow& row : rows) {
+        const auto used =
+            static_cast<double>(columns_of(row.figures) + columns_of(row.mark) + mark_sign);
+        const double room = (static_cast<double>(terminal.width) - used) / row.part;
+        // Where even the shortest bar leaves no room, the mark goes below.
+        if (room >= shortest) width = std::min(width, room);
     }
+    return static_cast<std::size_t>(width);
+}
+
+// A bar of eighths of a column.
+std::string bar(double part, std::size_t width, const Terminal& terminal) {
+    const auto eighths =
+        static_cast<std::size_t>(std::lround(part * static_cast<double>(width) * 8));
+    if (!terminal.unicode) return std::string((eighths + 7) / 8, '#');
+    static constexpr const char* partial[] = {"", "▏", "▎", "▍", "▌", "▋", "▊", "▉"};
+    std::string text;
+    for (std::size_t i = 0; i < eighths / 8; ++i) text += "█";
+    return text + partial[eighths % 8];
+}
+
+std::string curve_line(const CurveRow& row, std::size_t width, const Terminal& terminal) {
+    const auto styled_row = [&](const std::string& text) {
+        return row.chosen ? bold(text, terminal) : text;
+    };
+    const std::string blocks = bar(row.part, width, terminal);
+    const std::string line =
+        styled_row(row.figures) + (row.chosen ? bold(blocks, terminal) : faint(blocks, terminal));
+    if (row.mark.empty()) return line + "\n";
+    const std::size_t used = columns_of(row.figures) + columns_of(blocks);
+    if (used + mark_sign + columns_of(row.mark) <= width_of(terminal)) {
+        return line + styled_row((terminal.unicode ? " ◂ " : " < ") + row.mark) + "\n";
+    }
+    std::string below = wrapped(std::string(margin + 6, ' ') + (terminal.unicode ? "▴ " : "^ "),
+                                row.mark, width_of(terminal), margin + 8);
+    below.pop_back();
+    return line + "\n" + styled_row(below) + "\n";
+}
+
+std::string curve_lines(const Study& study, const Terminal& terminal) {
+    const std::vector<CurveRow> rows = curve_rows(study, terminal);
+    const std::size_t width = bar_width(rows, terminal);
+    // That 1 is about the least difference to be seen is common practice.
+    std::string text = remark(
+        "The colour difference that each count leaves, in CIEDE2000 (about 1 can just be "
+        "seen): on average, for 95 % of the pixels at most, and at the worst pixel." +
+            std::string(width > 0 ? " The bars show the RMS error, logarithmic." : ""),
+        terminal);
+    std::string head = std::string(margin, ' ') + "colours    mean    95 %   worst";
+    if (is_roomy(terminal)) head += "   RMS dE76";
+    text += faint(head, terminal) + "\n";
+    for (const CurveRow& row : rows) text += curve_line(row, width, terminal);
     return text;
+}
+
+std::string file_lines(const Study& study, const Terminal& terminal, const std::string& folder) {
+    std::string text = paragraph("In the folder " + shown(folder) + ":", terminal);
+    const auto add = [&](const char* name, const std::string& what) {
+        constexpr std::size_t column = margin + 14;
+        text += wrapped(flush_left(std::string(margin, ' ') + name, column), what,
+                        width_of(terminal), column);
+    };
+    add("reduced.png", "the picture in " + number_of_colours(study.count));
+    add("swatches.svg", "its palette, also as .png, .csv and .tokens.json");
+    add("curve.svg", "what each count loses, also as .csv");
+    add("study.json", "everything that was measured");
+    return text +
+           remark("A screen is no proof: judge colours on a printed one, under D50.", terminal);
 }
 
 }  // namespace
 
-std::string summary(const Study& study, const Terminal& terminal, const std::string& folder) {
-    return picture_line(study, terminal) + "\n" + proposal_lines(study, terminal) + "\n" +
+std::string summary(const Study& study, const std::optional<int>& asked, const Terminal& terminal,
+                    const std::string& folder) {
+    return picture_lines(study, terminal) + "\n" + proposal_lines(study, asked, terminal) + "\n" +
            swatch_lines(study, terminal) + "\n" + curve_lines(study, terminal) + "\n" +
-           wrapped("Files in " + shown(folder) +
-                       ": reduced.png, swatches.csv, .svg, .png and .tokens.json, curve.csv and "
-                       ".svg, study.json.",
-                   terminal.width) +
-           wrapped("A screen is no proof: judge colours on a printed one, under D50.",
-                   terminal.width);
+           file_lines(study, terminal, folder);
 }
 
 }  // namespace tincture

@@ -4,7 +4,9 @@
 #include <unistd.h>
 
 #include <algorithm>
+#include <cctype>
 #include <cstdlib>
+#include <string>
 #include <string_view>
 
 namespace tincture {
@@ -20,8 +22,12 @@ bool locale_is_utf8() {
     for (const char* name : {"LC_ALL", "LC_CTYPE", "LANG"}) {
         const std::string_view value = environment(name);
         if (value.empty()) continue;
-        return value.find("UTF-8") != std::string_view::npos ||
-               value.find("utf8") != std::string_view::npos;
+        // Written in many ways: C.UTF-8, en_GB.utf8.
+        std::string letters;
+        for (const char c : value) {
+            if (c != '-') letters += static_cast<char>(std::tolower(static_cast<unsigned char>(c)));
+        }
+        return letters.find("utf8") != std::string::npos;
     }
     return false;
 }

@@ -2,10 +2,11 @@
 
 #include <algorithm>
 #include <array>
-#include <bit>
+#include <cstring>
 
 #include "histogram/colour_table.h"
 #include "support/cancel.h"
+#include "support/large_block.h"
 #include "support/parallel.h"
 
 namespace tincture {
@@ -70,50 +71,50 @@ CountedColours count_hashed(const Picture& picture, const Sample* samples, std::
     return {all.sorted(), false};
 }
 
-// One place for each 24-bit colour, ordered so that colours which differ little lie close together:
-// the two low bits of each channel come last. A photograph then touches a quarter of the cache
-// lines.
+// One place for each 24-bit colour, in the order of their keys.
 struct DirectTable {
     static constexpr std::size_t size = std::size_t{1} << 24;
-    std::vector<std::uint32_t> places = std::vector<std::uint32_t>(size, 0);
+    LargeArray<std::uint32_t> places{size};
 
-    static std::uint32_t place(std::uint32_t r, std::uint32_t g, std::uint32_t b) {
-        return (r >> 2) << 18 | (g >> 2) << 12 | (b >> 2) << 6 | (r & 3) << 4 | (g & 3) << 2 |
-               (b & 3);
+    static std::size_t place(std::size_t r, std::size_t g, std::size_t b) {
+        return r << 16 | g << 8 | b;
     }
 
     void add(const Picture& picture, std::size_t begin, std::size_t end) {
         const std::uint8_t* s = picture.samples8.data() + 3 * begin;
+        std::uint32_t* counts = places.data();
         if (picture.opaque.empty()) {
-            for (std::size_t i = begin; i < end; ++i, s += 3) ++places[place(s[0], s[1], s[2])];
+            for (std::size_t i = begin; i < end; ++i, s += 3) ++counts[place(s[0], s[1], s[2])];
         } else {
             const std::uint8_t* opaque = picture.opaque.data();
             for (std::size_t i = begin; i < end; ++i, s += 3) {
-                places[place(s[0], s[1], s[2])] += opaque[i];
+                counts[place(s[0], s[1], s[2])] += opaque[i];
             }
         }
     }
 };
 
+// Most places are empty: eight at once are passed over.
+bool eight_are_zero(const std::uint32_t* places) {
+    std::array<std::uint64_t, 4> words;
+    std::memcpy(words.data(), places, sizeof words);
+    return (words[0] | words[1] | words[2] | words[3]) == 0;
+}
+
 std::vector<ColourCount> sorted_colours(const DirectTable& table) {
-    constexpr std::size_t parts = 64;  // by the six high bits of red: already in order
+    constexpr std::size_t parts = 64;
     std::array<std::vector<ColourCount>, parts> found;
     parallel_for(parts, [&](std::size_t part) {
-        const std::size_t first = part << 18;
-        for (std::size_t low_red = 0; low_red < 4; ++low_red) {
-            for (std::size_t place = first; place < first + (std::size_t{1} << 18); place += 16) {
-                if ((place >> 4 & 3) != low_red) continue;
-                for (std::size_t p = place; p < place + 16; ++p) {
-                    if (table.places[p] == 0) continue;
-                    const std::uint64_t r = (p >> 18) << 2 | (p >> 4 & 3);
-                    const std::uint64_t g = (p >> 12 & 63) << 2 | (p >> 2 & 3);
-                    const std::uint64_t b = (p >> 6 & 63) << 2 | (p & 3);
-                    found[part].push_back({r << 32 | g << 16 | b, table.places[p]});
-                }
+        constexpr std::size_t part_size = DirectTable::size / parts;
+        for (std::size_t at = part * part_size; at < (part + 1) * part_size; at += 8) {
+            if (eight_are_zero(table.places.data() + at)) continue;
+            for (std::size_t p = at; p < at + 8; ++p) {
+                if (table.places[p] == 0) continue;
+                const std::uint64_t key =
+                    std::uint64_t{p >> 16} << 32 | (p >> 8 & 0xFF) << 16 | (p & 0xFF);
+                found[part].push_back({key, table.places[p]});
             }
         }
-        std::sort(found[part].begin(), found[part].end(),
-                  [](const ColourCount& one, const ColourCount& two) { return one.key < two.key; });
     });
     std::vector<ColourCount> colours;
     for (const auto& part : found) colours.insert(colours.end(), part.begin(), part.end());

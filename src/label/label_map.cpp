@@ -58,7 +58,7 @@ void label_by_place(const Picture& picture, const ColourTable& table,
     const auto place = [](std::uint32_t r, std::uint32_t g, std::uint32_t b) {
         return r << 16 | g << 8 | b;
     };
-    std::vector<std::uint8_t> label_at(std::size_t{1} << 24);
+    LargeArray<std::uint8_t> label_at(std::size_t{1} << 24);
     for (std::size_t i = 0; i < table.size(); ++i) {
         const std::uint64_t key = table.key[i];
         label_at[place(key >> 32 & 0xFF, key >> 16 & 0xFF, key & 0xFF)] =
@@ -66,8 +66,9 @@ void label_by_place(const Picture& picture, const ColourTable& table,
     }
     for_each_stripe(picture.pixel_count(), [&](std::size_t begin, std::size_t end) {
         const std::uint8_t* s = picture.samples8.data() + 3 * begin;
-        for (std::size_t i = begin; i < end; ++i, s += 3)
+        for (std::size_t i = begin; i < end; ++i, s += 3) {
             out[i] = label_at[place(s[0], s[1], s[2])];
+        }
     });
 }
 

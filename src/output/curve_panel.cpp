@@ -13,8 +13,8 @@ namespace {
 
 using namespace curve_style;
 
-constexpr double kMarkSize = 7;
-constexpr double kLabelHeight = 16;
+constexpr double mark_size = 7;
+constexpr double label_height = 16;
 
 struct Words {
     std::string text;
@@ -67,9 +67,9 @@ class PanelDrawing {
             values.insert(values.end(), line.values.begin(), line.values.end());
         }
         if (panel.level) {
-            constexpr double kRoomBelow = 1.5;  // for its name
-            values.push_back(std::max(*panel.level / kRoomBelow, panel.floor));
-            values.push_back(std::max(*panel.level * kRoomBelow, panel.floor));
+            constexpr double room_below = 1.5;  // for its name
+            values.push_back(std::max(*panel.level / room_below, panel.floor));
+            values.push_back(std::max(*panel.level * room_below, panel.floor));
         }
         return {values, panel.floor, panel.frame.y, panel.frame.bottom()};
     }
@@ -77,17 +77,18 @@ class PanelDrawing {
     void ground() {
         const Box& frame = panel_.frame;
         svg_.text({frame.x - 48, frame.y - panel_.title_height}, panel_.title,
-                  {kLabel, Weight::medium, kInk, Anchor::start});
-        if (panel_.band.width > 0) svg_.box(panel_.band, kBand);
+                  {label_size, Weight::medium, ink, Anchor::start});
+        if (panel_.band.width > 0) svg_.box(panel_.band, band_grey);
         for (const AxisTick& tick : values_.ticks()) {
             if (tick.position < frame.bottom()) {
-                svg_.line({{frame.x, tick.position}, {frame.right(), tick.position}}, {kGrid, 1});
+                svg_.line({{frame.x, tick.position}, {frame.right(), tick.position}},
+                          {grid_grey, 1});
             }
             svg_.text({frame.x - 9, tick.position + 4}, tick.words,
-                      {kTick, Weight::regular, kQuiet, Anchor::end});
+                      {tick_size, Weight::regular, quiet, Anchor::end});
         }
-        svg_.line({{frame.x, frame.bottom()}, {frame.right(), frame.bottom()}}, {kQuiet, 1});
-        svg_.line({{frame.x, frame.y}, {frame.x, frame.bottom()}}, {kQuiet, 1});
+        svg_.line({{frame.x, frame.bottom()}, {frame.right(), frame.bottom()}}, {quiet, 1});
+        svg_.line({{frame.x, frame.y}, {frame.x, frame.bottom()}}, {quiet, 1});
         if (values_.is_broken()) cut({frame.x, values_.break_position()}, {6, 2.5}, {0, 3});
         if (axis_.break_position())
             cut({*axis_.break_position(), frame.bottom()}, {2.5, 6}, {3, 0});
@@ -100,19 +101,19 @@ class PanelDrawing {
             const Point middle{at.x + side * apart.x, at.y + side * apart.y};
             svg_.line({{middle.x - slant.x, middle.y + slant.y},
                        {middle.x + slant.x, middle.y - slant.y}},
-                      {kQuiet, 1});
+                      {quiet, 1});
         }
     }
 
     void level() {
         const double y = values_.position(*panel_.level);
         const Segment line{{panel_.frame.x, y}, {panel_.frame.right(), y}};
-        svg_.line(line, {kInk, 1.2, "1.5 3.5"});
+        svg_.line(line, {ink, 1.2, "1.5 3.5"});
         obstacles_.push_back(line);
     }
 
     void upright(Point from, Point to) {
-        svg_.line({from, to}, {kAccent, 1.5});
+        svg_.line({from, to}, {accent, 1.5});
         obstacles_.push_back({from, to});
     }
 
@@ -123,17 +124,17 @@ class PanelDrawing {
         const bool alone = axis_.break_position().has_value();
         const std::vector<Point> joined(points.begin(), points.end() - (alone ? 1 : 0));
         svg_.polyline(joined,
-                      {line.main ? kInk : kQuiet, line.main ? 2.0 : 1.5, line.main ? "" : "6 3.5"});
+                      {line.main ? ink : quiet, line.main ? 2.0 : 1.5, line.main ? "" : "6 3.5"});
         if (alone) {
-            svg_.line({points[points.size() - 2], points.back()}, {kQuiet, 1, "2 4"});
+            svg_.line({points[points.size() - 2], points.back()}, {quiet, 1, "2 4"});
         }
-        constexpr double kLeastGap = 12;
+        constexpr double least_gap = 12;
         const bool crowded =
-            joined.size() > 1 && joined.back().x - joined[joined.size() - 2].x < kLeastGap;
+            joined.size() > 1 && joined.back().x - joined[joined.size() - 2].x < least_gap;
         for (const Point& point : points) {
             if (crowded && point.x != points.back().x && point.x != points.front().x) continue;
-            svg_.dot(point, line.main ? 2.4 : 2.2, line.main ? kInk : "#ffffff",
-                     line.main ? kInk : kQuiet);
+            svg_.dot(point, line.main ? 2.4 : 2.2, line.main ? ink : "#ffffff",
+                     line.main ? ink : quiet);
             take(point, 3);
         }
     }
@@ -145,7 +146,7 @@ class PanelDrawing {
     void chosen_point(const std::vector<Point>& points) {
         for (const Point& point : points) {
             if (point.x != choice_x_) continue;
-            svg_.dot(point, 4.5, kAccent, "#ffffff");
+            svg_.dot(point, 4.5, accent, "#ffffff");
             take(point, 5);
         }
     }
@@ -156,25 +157,25 @@ class PanelDrawing {
 
     void draw_mark(const PanelMark& mark) {
         const Point at = point_of(mark);
-        const double r = kMarkSize;
+        const double r = mark_size;
         if (mark.shape == MarkShape::diamond) {
             const double d = r + 1;
             svg_.polygon(
                 std::array<Point, 4>{
                     {{at.x, at.y - d}, {at.x + d, at.y}, {at.x, at.y + d}, {at.x - d, at.y}}},
-                "none", kInk);
+                "none", ink);
         } else {
             svg_.polygon(std::array<Point, 3>{{{at.x, at.y - r - 2},
                                                {at.x + r + 1, at.y + r - 1},
                                                {at.x - r - 1, at.y + r - 1}}},
-                         "none", kInk);
+                         "none", ink);
         }
         take(at, r + 2);
     }
 
     LabelRequest request(const std::string& text, Weight weight, Point anchor) const {
-        const double width = text_width(text, kLabel, weight) * kWiderFont;
-        return {width, kLabelHeight, anchor, {}};
+        const double width = text_width(text, label_size, weight) * wider_font;
+        return {width, label_height, anchor, {}};
     }
 
     // Around a mark: where a falling curve leaves room first.
@@ -183,7 +184,7 @@ class PanelDrawing {
         LabelRequest label = request(mark.name, Weight::medium, at);
         const double w = label.width;
         const double h = label.height;
-        for (const double off : {kMarkSize + 6, kMarkSize + 14, kMarkSize + 24}) {
+        for (const double off : {mark_size + 6, mark_size + 14, mark_size + 24}) {
             label.places.insert(label.places.end(), {{at.x + off, at.y - off - h},
                                                      {at.x + off, at.y - h / 2},
                                                      {at.x - off - w, at.y + off},
@@ -194,7 +195,7 @@ class PanelDrawing {
                                                      {at.x - off - w, at.y - off - h}});
         }
         requests_.push_back(std::move(label));
-        words_.push_back({mark.name, kInk, Weight::medium});
+        words_.push_back({mark.name, ink, Weight::medium});
     }
 
     void request_level() {
@@ -207,7 +208,7 @@ class PanelDrawing {
         }
         label.anchor = {last, y};
         requests_.push_back(std::move(label));
-        words_.push_back({panel_.level_name, kInk, Weight::regular});
+        words_.push_back({panel_.level_name, ink, Weight::regular});
     }
 
     // Points of a line, and the middles between them, where it can be seen apart from the others
@@ -218,8 +219,8 @@ class PanelDrawing {
         const auto hidden = [&](std::size_t i) {
             if (points[i].y > panel_.frame.bottom() - 1) return true;
             return std::any_of(points_.begin(), points_.end(), [&](const auto& other) {
-                constexpr double kApart = 5;
-                return &other != &points && std::abs(other[i].y - points[i].y) < kApart;
+                constexpr double apart = 5;
+                return &other != &points && std::abs(other[i].y - points[i].y) < apart;
             });
         };
         for (std::size_t i = 0; i < points.size(); ++i) {
@@ -256,7 +257,7 @@ class PanelDrawing {
             }
         }
         requests_.push_back(std::move(label));
-        words_.push_back({names_[line], panel_.lines[line].main ? kInk : kQuiet, Weight::regular});
+        words_.push_back({names_[line], panel_.lines[line].main ? ink : quiet, Weight::regular});
     }
 
     [[nodiscard]] double mean_height(std::size_t line) const {
@@ -283,9 +284,9 @@ class PanelDrawing {
                 continue;
             }
             const Box& box = places[i]->box;
-            if (places[i]->leader) svg_.line(*places[i]->leader, {kQuiet, 0.75});
+            if (places[i]->leader) svg_.line(*places[i]->leader, {quiet, 0.75});
             svg_.text({box.x + box.width / 2, box.y + 12.5}, words_[i].text,
-                      {kLabel, words_[i].weight, words_[i].colour, Anchor::middle});
+                      {label_size, words_[i].weight, words_[i].colour, Anchor::middle});
         }
         return left_over;
     }

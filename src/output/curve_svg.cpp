@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 #include <optional>
+#include <stdexcept>
 #include <string_view>
 #include <vector>
 
@@ -19,13 +20,13 @@ namespace {
 
 using namespace curve_style;
 
-constexpr double kWidth = 880;
-constexpr double kHeight = 712;
-constexpr double kLeft = 76;  // of the plots
-constexpr double kRight = 848;
-constexpr double kMargin = 28;
-constexpr Box kErrorFrame{kLeft, 168, kRight - kLeft, 230};
-constexpr Box kDifferenceFrame{kLeft, 446, kRight - kLeft, 180};
+constexpr double page_width = 880;
+constexpr double page_height = 712;
+constexpr double plot_left = 76;  // of the plots
+constexpr double plot_right = 848;
+constexpr double margin = 28;
+constexpr Box error_frame{plot_left, 168, plot_right - plot_left, 230};
+constexpr Box difference_frame{plot_left, 446, plot_right - plot_left, 180};
 
 std::string colours(int count) {
     return std::to_string(count) + (count == 1 ? " colour" : " colours");
@@ -76,15 +77,16 @@ class CurveDrawing {
     explicit CurveDrawing(const Study& study)
         : study_(study),
           counts_(counts_of(study)),
-          axis_(counts_, kLeft, kRight),
-          svg_(kWidth, kHeight, "tincture-curve", "Error curve of " + legible(study.picture.file),
+          axis_(counts_, plot_left, plot_right),
+          svg_(page_width, page_height, "tincture-curve",
+               "Error curve of " + legible(study.picture.file),
                choice_words(study) + ' ' + figures_words(study) + ' ' + study.proposal.sentence) {
         if (!has_proposal(study)) return;
         const int last = axis_.last();
         low_ = axis_.position(std::clamp(study.proposal.low, counts_.front(), last) - 0.45);
         high_ = axis_.position(std::clamp(study.proposal.high, counts_.front(), last) + 0.45);
-        low_ = std::max(low_, kLeft);
-        high_ = std::min(high_, kRight);
+        low_ = std::max(low_, plot_left);
+        high_ = std::min(high_, plot_right);
     }
 
     std::string draw() {
@@ -115,14 +117,14 @@ class CurveDrawing {
     }
 
     void head() {
-        const double width = (kWidth - 2 * kMargin) / kWiderFont;
-        svg_.text({kMargin, 42}, shortened(legible(study_.picture.file), 20, Weight::medium, width),
-                  {20, Weight::medium, kInk, Anchor::start});
-        svg_.text({kMargin, 64}, choice_words(study_),
-                  {kLabel, Weight::regular, kInk, Anchor::start});
-        svg_.text({kMargin, 82}, figures_words(study_),
-                  {kLabel, Weight::regular, kQuiet, Anchor::start});
-        strip({kMargin, 96, kWidth - 2 * kMargin, 10});
+        const double width = (page_width - 2 * margin) / wider_font;
+        svg_.text({margin, 42}, shortened(legible(study_.picture.file), 20, Weight::medium, width),
+                  {20, Weight::medium, ink, Anchor::start});
+        svg_.text({margin, 64}, choice_words(study_),
+                  {label_size, Weight::regular, ink, Anchor::start});
+        svg_.text({margin, 82}, figures_words(study_),
+                  {label_size, Weight::regular, quiet, Anchor::start});
+        strip({margin, 96, page_width - 2 * margin, 10});
     }
 
     // The palette in use, each colour as wide as its share.
@@ -141,9 +143,11 @@ class CurveDrawing {
     void choice_name() {
         const std::string name =
             (study_.count_was_given ? "given: " : "proposed: ") + std::to_string(study_.count);
-        const double half = text_width(name, kLabel, Weight::medium) * kWiderFont / 2;
-        const double x = std::clamp(axis_.position(study_.count), kLeft + half, kRight - half);
-        svg_.text({x, kErrorFrame.y - 6}, name, {kLabel, Weight::medium, kAccent, Anchor::middle});
+        const double half = text_width(name, label_size, Weight::medium) * wider_font / 2;
+        const double x =
+            std::clamp(axis_.position(study_.count), plot_left + half, plot_right - half);
+        svg_.text({x, error_frame.y - 6}, name,
+                  {label_size, Weight::medium, accent, Anchor::middle});
     }
 
     [[nodiscard]] Box band_in(const Box& frame) const {
@@ -153,11 +157,11 @@ class CurveDrawing {
     Panel error_panel() const {
         const auto root = [](double mse) { return std::sqrt(std::max(mse, 0.0)); };
         Panel panel{
-            kErrorFrame,  "Error: root mean squared difference in CIELAB (CIE 1976, log scale)",
+            error_frame,  "Error: root mean squared difference in CIELAB (CIE 1976, log scale)",
             28,           0.05,
             {},           {},
             {},           {},
-            study_.count, band_in(kErrorFrame)};
+            study_.count, band_in(error_frame)};
         panel.lines = {
             {"all pixels", values([&](const CurvePoint& p) { return root(p.mse); }), true},
             {"evidence", values([&](const CurvePoint& p) { return root(p.evidence_mse); }), false}};
@@ -178,7 +182,7 @@ class CurveDrawing {
     }
 
     Panel difference_panel() const {
-        Panel panel{kDifferenceFrame,
+        Panel panel{difference_frame,
                     "Difference from the original (CIEDE2000, log scale)",
                     12,
                     0.1,
@@ -187,7 +191,7 @@ class CurveDrawing {
                     study_.tolerance,
                     "tolerance " + tolerance_words(),
                     study_.count,
-                    band_in(kDifferenceFrame)};
+                    band_in(difference_frame)};
         panel.lines = {{"95\u2009% of the pixels",
                         values([](const CurvePoint& p) { return p.p95_de00; }), true},
                        {"average", values([](const CurvePoint& p) { return p.mean_de00; }), false}};
@@ -212,34 +216,34 @@ class CurveDrawing {
     }
 
     void foot(const std::vector<std::string>& left_over) {
-        const double y = kDifferenceFrame.bottom();
+        const double y = difference_frame.bottom();
         for (const AxisTick& tick : axis_.ticks(study_.count)) {
-            svg_.line({{tick.position, y}, {tick.position, y + 4}}, {kQuiet, 1});
+            svg_.line({{tick.position, y}, {tick.position, y + 4}}, {quiet, 1});
             const bool chosen = tick.words == std::to_string(study_.count);
             svg_.text({tick.position, y + 18}, tick.words,
-                      {kTick, chosen ? Weight::medium : Weight::regular, chosen ? kAccent : kQuiet,
-                       Anchor::middle});
+                      {tick_size, chosen ? Weight::medium : Weight::regular,
+                       chosen ? accent : quiet, Anchor::middle});
         }
         if (has_proposal(study_)) bracket(y + 26);
         std::string title =
             axis_.is_logarithmic() ? "Number of colours (log scale)" : "Number of colours";
         for (const std::string& name : left_over) title += "; " + name;
-        svg_.text({(kLeft + kRight) / 2, y + 70}, title,
-                  {kLabel, Weight::medium, kInk, Anchor::middle});
+        svg_.text({(plot_left + plot_right) / 2, y + 70}, title,
+                  {label_size, Weight::medium, ink, Anchor::middle});
     }
 
     void bracket(double y) {
         svg_.polyline(std::vector<Point>{{low_, y}, {low_, y + 5}, {high_, y + 5}, {high_, y}},
-                      {kQuiet, 1});
+                      {quiet, 1});
         std::string words = range_words(study_.proposal) + " can be defended";
         if (study_.count_was_given && study_.count != study_.proposal.count) {
             words = "proposed: " + std::to_string(study_.proposal.count) + "; " + words;
             const double x = axis_.position(study_.proposal.count);
-            svg_.dot({x, y + 5}, 3.5, "#ffffff", kQuiet);
+            svg_.dot({x, y + 5}, 3.5, "#ffffff", quiet);
         }
-        const double half = text_width(words, kLabel, Weight::regular) * kWiderFont / 2;
-        const double x = std::clamp((low_ + high_) / 2, kLeft + half, kRight - half);
-        svg_.text({x, y + 22}, words, {kLabel, Weight::regular, kQuiet, Anchor::middle});
+        const double half = text_width(words, label_size, Weight::regular) * wider_font / 2;
+        const double x = std::clamp((low_ + high_) / 2, plot_left + half, plot_right - half);
+        svg_.text({x, y + 22}, words, {label_size, Weight::regular, quiet, Anchor::middle});
     }
 
     const Study& study_;

@@ -21,10 +21,10 @@ bool holds_objects(const Json& value) {
 }
 
 void write(const Json& value, std::size_t indent, std::string& text) {
-    constexpr std::size_t kLineWidth = 200;
+    constexpr std::size_t line_width = 200;
     if (!value.is_structured() || value.empty() || !holds_objects(value)) {
         const std::string line = one_line(value);
-        if (!value.is_structured() || line.size() <= kLineWidth) {
+        if (!value.is_structured() || line.size() <= line_width) {
             text += line;
             return;
         }

@@ -5,8 +5,8 @@
 namespace tincture {
 namespace {
 
-constexpr double kClearance = 3;
-constexpr double kGrid = 6;
+constexpr double clearance = 3;
+constexpr double grid_step = 6;
 
 Box grown(const Box& box, double by) {
     return {box.x - by, box.y - by, box.width + 2 * by, box.height + 2 * by};
@@ -39,7 +39,7 @@ class Placer {
 
   private:
     [[nodiscard]] bool is_free(const Box& box) const {
-        const Box room = grown(box, kClearance);
+        const Box room = grown(box, clearance);
         return contains(frame_, room) &&
                std::none_of(taken_.begin(), taken_.end(),
                             [&](const Box& other) { return overlap(room, other); }) &&
@@ -57,8 +57,8 @@ class Placer {
     std::optional<LabelPlace> place_apart(const LabelRequest& request) {
         std::optional<LabelPlace> best;
         double best_distance = 0;
-        for (double y = frame_.y; y < frame_.bottom(); y += kGrid) {
-            for (double x = frame_.x; x < frame_.right(); x += kGrid) {
+        for (double y = frame_.y; y < frame_.bottom(); y += grid_step) {
+            for (double x = frame_.x; x < frame_.right(); x += grid_step) {
                 const Box box{x, y, request.width, request.height};
                 const Point end = nearest_in(box, request.anchor);
                 const double distance = squared_distance(end, request.anchor);

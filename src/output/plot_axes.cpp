@@ -7,39 +7,24 @@
 #include <initializer_list>
 
 #include "support/format.h"
+#include "support/maths.h"
 
 namespace tincture {
 namespace {
 
-constexpr double kFoot = 26;  // pixels from the logarithmic part down to the foot
-constexpr double kLeastTickDistance = 18;
+constexpr double foot_height = 26;  // pixels from the logarithmic part down to the foot
+constexpr double least_tick_distance = 18;
 
-// Base 10, for positive numbers, by plain arithmetic: the C library's differs between processors.
-// Good to 1e-15.
 double log10_plain(double value) {
-    constexpr double kLn2 = 0.6931471805599453;
-    constexpr double kLn10 = 2.302585092994046;
-    int exponent = 0;
-    double part = std::frexp(value, &exponent);
-    if (part < 0.7071067811865476) {
-        part *= 2;
-        --exponent;
-    }
-    const double s = (part - 1) / (part + 1);  // ln part = 2 artanh s
-    double power = s;
-    double sum = s;
-    for (int n = 3; n <= 25; n += 2) {
-        power *= s * s;
-        sum += power / n;
-    }
-    return (2 * sum + exponent * kLn2) / kLn10;
+    constexpr double ln_10 = 2.302585092994046;
+    return natural_log(value) / ln_10;
 }
 
 // 1, 2 or 5 times a power of ten; steps count from 1, three to a decade.
 double round_value(int step) {
-    constexpr std::array<int, 3> kDigits = {1, 2, 5};
+    constexpr std::array<int, 3> digits = {1, 2, 5};
     const int decade = step >= 0 ? step / 3 : -((2 - step) / 3);
-    double value = kDigits[static_cast<std::size_t>(step - 3 * decade)];
+    double value = digits[static_cast<std::size_t>(step - 3 * decade)];
     for (int i = 0; i < decade; ++i) value *= 10;
     for (int i = 0; i > decade; --i) value /= 10;
     return value;
@@ -51,7 +36,9 @@ int step_below(double value) {
     return step;
 }
 
-int decimals_of(int step) { return step >= 0 ? 0 : (2 - step) / 3; }
+int decimals_of(int step) {
+    return step >= 0 ? 0 : (2 - step) / 3;
+}
 
 }  // namespace
 
@@ -70,16 +57,16 @@ LogAxis::LogAxis(std::span<const double> values, double floor, double top, doubl
         largest = std::max(largest, value);
     }
     if (largest == 0) smallest = largest = 1;
-    constexpr double kSpare = 1.2;
-    small_ = smallest / kSpare;
-    large_ = largest * kSpare;
-    constexpr double kLeastRatio = 6;
-    if (large_ < small_ * kLeastRatio) {
-        const double widen = std::sqrt(small_ * kLeastRatio / large_);
+    constexpr double spare = 1.2;
+    small_ = smallest / spare;
+    large_ = largest * spare;
+    constexpr double least_ratio = 6;
+    if (large_ < small_ * least_ratio) {
+        const double widen = std::sqrt(small_ * least_ratio / large_);
         small_ /= widen;
         large_ *= widen;
     }
-    lowest_ = broken_ ? bottom - kFoot : bottom;
+    lowest_ = broken_ ? bottom - foot_height : bottom;
     if (!all_zero) {
         foot_ = '<';
         const int step = step_below(floor);
@@ -94,7 +81,7 @@ double LogAxis::position(double value) const {
 }
 
 double LogAxis::break_position() const {
-    return bottom_ - kFoot / 2;
+    return bottom_ - foot_height / 2;
 }
 
 std::vector<AxisTick> LogAxis::ticks() const {
@@ -104,7 +91,7 @@ std::vector<AxisTick> LogAxis::ticks() const {
     // apart and that is too little.
     const auto of_digits = [&](std::initializer_list<double> digits, double closest, int decades) {
         std::vector<AxisTick> ticks;
-        if (closest * decade < kLeastTickDistance) return ticks;
+        if (closest * decade < least_tick_distance) return ticks;
         for (int step = low - low % (3 * decades) - 3 * decades; round_value(step) <= large_;
              step += 3 * decades) {
             for (const double digit : digits) {
@@ -116,9 +103,9 @@ std::vector<AxisTick> LogAxis::ticks() const {
         }
         return ticks;
     };
-    constexpr std::size_t kFew = 4;
+    constexpr std::size_t few = 4;
     std::vector<AxisTick> ticks = of_digits({1, 2, 5}, 0.301, 1);
-    if (ticks.size() < kFew) {
+    if (ticks.size() < few) {
         const auto more = of_digits({1, 1.5, 2, 3, 5, 7}, 0.124, 1);
         if (!more.empty()) ticks = more;
     }
@@ -135,12 +122,12 @@ CountAxis::CountAxis(std::span<const int> counts, double left, double right)
         if (count > last_ + 1) alone_ = count;
         if (count == last_ + 1) last_ = count;
     }
-    constexpr int kMostLinear = 60;
-    constexpr double kSpareEnd = 16;
-    constexpr double kAloneRoom = 84;
-    logarithmic_ = last_ - first_ > kMostLinear;
-    left_ = left + kSpareEnd;
-    right_ = right - (alone_ ? kAloneRoom : kSpareEnd);
+    constexpr int most_linear = 60;
+    constexpr double spare_end = 16;
+    constexpr double alone_room = 84;
+    logarithmic_ = last_ - first_ > most_linear;
+    left_ = left + spare_end;
+    right_ = right - (alone_ ? alone_room : spare_end);
     if (last_ - first_ < 4) {  // a few counts stand together instead of at the far ends
         const double spare = (right_ - left_) * (4 - (last_ - first_)) / 10;
         left_ += spare;
@@ -165,12 +152,12 @@ std::optional<double> CountAxis::break_position() const {
 }
 
 std::vector<AxisTick> CountAxis::ticks(int marked) const {
-    constexpr double kRoom = 24;  // for three digits
+    constexpr double label_room = 24;  // for three digits
     std::vector<int> shown;
     const auto offer = [&](int count) {
         if (count != alone_.value_or(0) && (count < first_ || count > last_)) return;
         const auto near = [&](int other) {
-            return std::abs(position(other) - position(count)) < kRoom;
+            return std::abs(position(other) - position(count)) < label_room;
         };
         if (std::none_of(shown.begin(), shown.end(), near)) shown.push_back(count);
     };
@@ -182,8 +169,8 @@ std::vector<AxisTick> CountAxis::ticks(int marked) const {
             offer(count);
         }
     } else {
-        const double gap = last_ == first_ ? kRoom : position(first_ + 1) - position(first_);
-        const int step = gap >= kRoom ? 1 : gap * 2 >= kRoom ? 2 : 5;
+        const double gap = last_ == first_ ? label_room : position(first_ + 1) - position(first_);
+        const int step = gap >= label_room ? 1 : gap * 2 >= label_room ? 2 : 5;
         const int start = step == 1 ? first_ : step;
         for (int count = start; count <= last_; count += step) offer(count);
     }

@@ -33,9 +33,9 @@ void append_chunk(Bytes& png, std::string_view type, const Bytes& data) {
 class RowDeflater {
   public:
     explicit RowDeflater(std::size_t row_bytes) : row_(row_bytes + 1), above_(row_bytes) {
-        constexpr int kWindowBits = 15;
-        constexpr int kMemory = 9;
-        if (deflateInit2(&stream_, 1, Z_DEFLATED, kWindowBits, kMemory, Z_RLE) != Z_OK) {
+        constexpr int window_bits = 15;
+        constexpr int memory_level = 9;
+        if (deflateInit2(&stream_, 1, Z_DEFLATED, window_bits, memory_level, Z_RLE) != Z_OK) {
             throw std::bad_alloc();
         }
     }
@@ -44,8 +44,8 @@ class RowDeflater {
     ~RowDeflater() { deflateEnd(&stream_); }
 
     void add(const std::uint8_t* row) {
-        constexpr std::uint8_t kUp = 2;
-        row_[0] = kUp;
+        constexpr std::uint8_t up_filter = 2;
+        row_[0] = up_filter;
         for (std::size_t i = 0; i < above_.size(); ++i) {
             row_[i + 1] = static_cast<std::uint8_t>(row[i] - above_[i]);
         }
@@ -80,7 +80,7 @@ class RowDeflater {
 // The colours of `pixels` in the order in which they appear, and for each pixel the index of its
 // own; nothing where they are more than 256.
 std::vector<Rgb8> index_colours(const std::vector<Rgb8>& pixels, Bytes& indices) {
-    constexpr std::size_t kMostColours = 256;
+    constexpr std::size_t most_colours = 256;
     std::vector<Rgb8> palette;
     std::map<Rgb8, std::uint8_t> index_of;
     indices.resize(pixels.size());
@@ -91,7 +91,7 @@ std::vector<Rgb8> index_colours(const std::vector<Rgb8>& pixels, Bytes& indices)
         }
         const auto [entry, added] =
             index_of.try_emplace(pixels[i], static_cast<std::uint8_t>(palette.size()));
-        if (added && palette.size() == kMostColours) return {};
+        if (added && palette.size() == most_colours) return {};
         if (added) palette.push_back(pixels[i]);
         indices[i] = entry->second;
     }

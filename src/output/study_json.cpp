@@ -12,11 +12,11 @@ namespace {
 
 using Json = nlohmann::ordered_json;
 
-constexpr int kMse = 6;
-constexpr int kShare = 6;
-constexpr int kDe = 4;
-constexpr int kLab = 4;
-constexpr int kDpi = 3;
+constexpr int mse_decimals = 6;
+constexpr int share_decimals = 6;
+constexpr int de_decimals = 4;
+constexpr int lab_decimals = 4;
+constexpr int dpi_decimals = 3;
 
 template <typename Value>
 Json known(const std::optional<Value>& value) {
@@ -38,10 +38,11 @@ Json picture_json(const PictureFacts& picture) {
                  {"opaque_pixels", picture.opaque_pixels},
                  {"distinct_colours", picture.distinct_colours}};
     if (picture.resolution) {
-        json["dpi"] = {rounded(picture.resolution->x_dpi, kDpi),
-                       rounded(picture.resolution->y_dpi, kDpi)};
+        json["dpi"] = {rounded(picture.resolution->x_dpi, dpi_decimals),
+                       rounded(picture.resolution->y_dpi, dpi_decimals)};
     }
-    if (picture.colour_cell_de) json["colour_cell_de"] = rounded(*picture.colour_cell_de, kDe);
+    if (picture.colour_cell_de)
+        json["colour_cell_de"] = rounded(*picture.colour_cell_de, de_decimals);
     return json;
 }
 
@@ -49,12 +50,12 @@ Json curve_json(const std::vector<CurvePoint>& curve) {
     Json json = Json::array();
     for (const CurvePoint& point : curve) {
         json.push_back({{"count", point.count},
-                        {"evidence_mse", rounded(point.evidence_mse, kMse)},
-                        {"mse", rounded(point.mse, kMse)},
-                        {"mean_de00", rounded(point.mean_de00, kDe)},
-                        {"p95_de00", rounded(point.p95_de00, kDe)},
-                        {"max_de00", rounded(point.max_de00, kDe)},
-                        {"closest_pair_de00", known(point.closest_pair_de00, kDe)}});
+                        {"evidence_mse", rounded(point.evidence_mse, mse_decimals)},
+                        {"mse", rounded(point.mse, mse_decimals)},
+                        {"mean_de00", rounded(point.mean_de00, de_decimals)},
+                        {"p95_de00", rounded(point.p95_de00, de_decimals)},
+                        {"max_de00", rounded(point.max_de00, de_decimals)},
+                        {"closest_pair_de00", known(point.closest_pair_de00, de_decimals)}});
     }
     return json;
 }
@@ -67,17 +68,18 @@ Json proposal_json(const Proposal& proposal) {
     }
     return {{"count", proposal.count},
             {"range", Json::array({proposal.low, proposal.high})},
-            {"confidence", rounded(proposal.confidence, kDe)},
+            {"confidence", rounded(proposal.confidence, de_decimals)},
             {"sentence", proposal.sentence},
             {"votes", votes}};
 }
 
 Json swatch_json(const Swatch& swatch) {
     Json json = {{"name", swatch.name}, {"hex", hex(swatch.srgb)}};
-    if (swatch.hex_de00) json["hex_de00"] = rounded(*swatch.hex_de00, kDe);
-    json["lab"] = Json::array(
-        {rounded(swatch.lab.L, kLab), rounded(swatch.lab.a, kLab), rounded(swatch.lab.b, kLab)});
-    json["share"] = rounded(swatch.share, kShare);
+    if (swatch.hex_de00) json["hex_de00"] = rounded(*swatch.hex_de00, de_decimals);
+    json["lab"] =
+        Json::array({rounded(swatch.lab.L, lab_decimals), rounded(swatch.lab.a, lab_decimals),
+                     rounded(swatch.lab.b, lab_decimals)});
+    json["share"] = rounded(swatch.share, share_decimals);
     json["pixels"] = swatch.pixels;
     if (swatch.kept) json["kept"] = true;
     return json;
@@ -96,8 +98,9 @@ Json palettes_json(const std::vector<Palette>& palettes) {
 Json labels_json(const LabelFacts& labels) {
     if (labels.shares.empty()) return nullptr;
     Json shares = Json::array();
-    for (const double share : labels.shares) shares.push_back(rounded(share, kShare));
-    return {{"shares", std::move(shares)}, {"tidied_share", rounded(labels.tidied_share, kShare)}};
+    for (const double share : labels.shares) shares.push_back(rounded(share, share_decimals));
+    return {{"shares", std::move(shares)},
+            {"tidied_share", rounded(labels.tidied_share, share_decimals)}};
 }
 
 }  // namespace
@@ -107,9 +110,9 @@ std::string study_json(const Study& study, std::string_view version) {
                        {"picture", picture_json(study.picture)},
                        {"evidence",
                         {{"kind", known(study.evidence.kind)},
-                         {"flat_share", known(study.evidence.flat_share, kShare)},
-                         {"noise", known(study.evidence.noise, kDe)}}},
-                       {"tolerance", rounded(study.tolerance, kDe)},
+                         {"flat_share", known(study.evidence.flat_share, share_decimals)},
+                         {"noise", known(study.evidence.noise, de_decimals)}}},
+                       {"tolerance", rounded(study.tolerance, de_decimals)},
                        {"curve", curve_json(study.curve)},
                        {"proposal", proposal_json(study.proposal)},
                        {"count", study.count},

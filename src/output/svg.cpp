@@ -7,7 +7,7 @@ namespace tincture {
 namespace {
 
 // Common practice for fonts as wide as Roboto; wider ones still fit, see curve_drawing.cpp.
-constexpr std::string_view kFonts =
+constexpr std::string_view fonts =
     "Roboto, 'Helvetica Neue', Helvetica, Arial, 'Liberation Sans', sans-serif";
 
 std::string number(double value) {
@@ -54,7 +54,7 @@ SvgWriter::SvgWriter(double width, double height, std::string_view id, std::stri
     attribute("viewBox", "0 0 " + number(width) + ' ' + number(height));
     attribute("role", "img");
     attribute("aria-labelledby", name + "-title " + name + "-description");
-    attribute("font-family", kFonts);
+    attribute("font-family", fonts);
     text_ += ">\n<title id=\"" + name + "-title\">" + xml_escape(title) + "</title>\n<desc id=\"" +
              name + "-description\">" + xml_escape(description) + "</desc>\n";
     box({0, 0, width, height}, "#ffffff");

@@ -12,20 +12,20 @@
 namespace tincture {
 namespace {
 
-constexpr Rgb8 kInk{28, 28, 28};
-constexpr Rgb8 kQuiet{92, 92, 92};
-constexpr Rgb8 kHairline{190, 190, 190};
-constexpr Rgb8 kBar{112, 112, 112};
-constexpr Rgb8 kTrack{234, 234, 234};
-constexpr double kMargin = 32;
-constexpr double kHead = 108;  // height above the first row
-constexpr double kScale = 2;   // of the PNG
-constexpr std::uint32_t kPixelsPerMetre =
+constexpr Rgb8 ink{28, 28, 28};
+constexpr Rgb8 quiet{92, 92, 92};
+constexpr Rgb8 hairline{190, 190, 190};
+constexpr Rgb8 bar_grey{112, 112, 112};
+constexpr Rgb8 track_grey{234, 234, 234};
+constexpr double margin = 32;
+constexpr double head_height = 108;  // height above the first row
+constexpr double png_scale = 2;      // of the PNG
+constexpr std::uint32_t pixels_per_metre =
     7559;  // 192 a inch, so that it prints as large as the SVG
 
-constexpr std::string_view kCaution =
+constexpr std::string_view caution =
     "Screen colours are no proof: compare a print or a measured swatch before you order ink.";
-constexpr std::string_view kNoSrgb =
+constexpr std::string_view no_srgb =
     "\u2248 sRGB cannot hold this colour: the chip and its hex form are only the nearest.";
 
 // How a sheet looks at some number of colours.
@@ -43,13 +43,13 @@ struct Look {
     int decimals;       // of Lab
 };
 
-constexpr Look kRoomy{1, 720, 0, 120, 56, 72, 20, 15, 13, 88, 2};
-constexpr Look kMedium{2, 960, 36, 76, 46, 60, 14, 13.5, 12, 82, 2};
-constexpr Look kDense{4, 1376, 28, 46, 38, 50, 10, 12, 11, 74, 1};
+constexpr Look roomy{1, 720, 0, 120, 56, 72, 20, 15, 13, 88, 2};
+constexpr Look medium{2, 960, 36, 76, 46, 60, 14, 13.5, 12, 82, 2};
+constexpr Look dense{4, 1376, 28, 46, 38, 50, 10, 12, 11, 74, 1};
 
 const Look& look_of(std::size_t colours) {
-    if (colours <= 12) return kRoomy;
-    return colours <= 48 ? kMedium : kDense;
+    if (colours <= 12) return roomy;
+    return colours <= 48 ? medium : dense;
 }
 
 std::string percent(double share) {
@@ -96,14 +96,13 @@ class Sheet {
         sheet_.width = look_.width;
         head();
         const double column_width =
-            (look_.width - 2 * kMargin - look_.gutter * (look_.columns - 1)) / look_.columns;
+            (look_.width - 2 * margin - look_.gutter * (look_.columns - 1)) / look_.columns;
         for (std::size_t i = 0; i < colours; ++i) {
-            const double x =
-                kMargin + static_cast<double>(i / rows) * (column_width + look_.gutter);
-            const double y = kHead + static_cast<double>(i % rows) * look_.row;
+            const double x = margin + static_cast<double>(i / rows) * (column_width + look_.gutter);
+            const double y = head_height + static_cast<double>(i % rows) * look_.row;
             swatch({x, y, column_width, look_.chip_height}, palette_.swatches[i]);
         }
-        foot(kHead + static_cast<double>(rows) * look_.row);
+        foot(head_height + static_cast<double>(rows) * look_.row);
         return std::move(sheet_);
     }
 
@@ -119,7 +118,7 @@ class Sheet {
     }
 
     void head() {
-        const double width = look_.width - 2 * kMargin;
+        const double width = look_.width - 2 * margin;
         const std::string file = legible(study_.picture.file);
         const std::string count =
             std::to_string(study_.count) + (study_.count == 1 ? " colour" : " colours");
@@ -128,22 +127,22 @@ class Sheet {
             sheet_.description +=
                 swatch.name + ' ' + hex(swatch.srgb) + ' ' + fixed(100 * swatch.share, 2) + " %; ";
         }
-        sheet_.description += kCaution;
-        text({kMargin, 46}, shortened(file, 20, Weight::medium, width), 20, kInk, Weight::medium);
-        text({kMargin, 68},
+        sheet_.description += caution;
+        text({margin, 46}, shortened(file, 20, Weight::medium, width), 20, ink, Weight::medium);
+        text({margin, 68},
              count + (study_.count_was_given ? ", the number that was given"
                                              : ", the number that is proposed"),
-             13, kQuiet);
-        text({kMargin, 86},
+             13, quiet);
+        text({margin, 86},
              "Lab is CIELAB, D50, 2\u00b0. Bars show the share of the picture; a whole track is " +
                  fixed(100 * whole_track_, 0) + "\u2009%.",
-             13, kQuiet);
+             13, quiet);
     }
 
     void swatch(const Box& cell, const Swatch& swatch) {
-        constexpr double kNearWhite = 88;
+        constexpr double near_white = 88;
         field({cell.x, cell.y, look_.chip_width, look_.chip_height}, swatch.srgb,
-              swatch.lab.L >= kNearWhite);
+              swatch.lab.L >= near_white);
         const double left = cell.x + look_.chip_width + look_.gap;
         const double width = cell.right() - left;
         const std::string share = percent(swatch.share);
@@ -152,26 +151,26 @@ class Sheet {
         const double room = width - text_width(share, look_.name_size, Weight::regular) - 18;
         text({left, name_line},
              shortened(legible(swatch.name), look_.name_size, Weight::medium, room),
-             look_.name_size, kInk, Weight::medium);
-        text({cell.right(), name_line}, share, look_.name_size, kInk, Weight::regular, Anchor::end);
-        text({left, detail_line}, hex_words(swatch), look_.detail_size, kQuiet);
+             look_.name_size, ink, Weight::medium);
+        text({cell.right(), name_line}, share, look_.name_size, ink, Weight::regular, Anchor::end);
+        text({left, detail_line}, hex_words(swatch), look_.detail_size, quiet);
         text({left + look_.lab_column, detail_line}, lab_words(swatch, look_), look_.detail_size,
-             kQuiet);
+             quiet);
         const double bar = std::round(width * std::min(1.0, swatch.share / whole_track_));
-        field({left, cell.bottom() - 3, width, 3}, kTrack);
-        if (swatch.share > 0) field({left, cell.bottom() - 3, std::max(1.0, bar), 3}, kBar);
+        field({left, cell.bottom() - 3, width, 3}, track_grey);
+        if (swatch.share > 0) field({left, cell.bottom() - 3, std::max(1.0, bar), 3}, bar_grey);
     }
 
     void foot(double y) {
-        field({kMargin, y + 4, look_.width - 2 * kMargin, 1}, kHairline);
+        field({margin, y + 4, look_.width - 2 * margin, 1}, hairline);
         y += 26;
         const bool clipped = std::any_of(palette_.swatches.begin(), palette_.swatches.end(),
                                          [](const Swatch& swatch) { return swatch.hex_de00; });
         if (clipped) {
-            text({kMargin, y}, std::string(kNoSrgb), 13, kQuiet);
+            text({margin, y}, std::string(no_srgb), 13, quiet);
             y += 19;
         }
-        text({kMargin, y}, std::string(kCaution), 13, kQuiet);
+        text({margin, y}, std::string(caution), 13, quiet);
         sheet_.height = y + 22;
     }
 
@@ -183,7 +182,7 @@ class Sheet {
 };
 
 int pixel(double length) {
-    return static_cast<int>(std::lround(length * kScale));
+    return static_cast<int>(std::lround(length * png_scale));
 }
 
 void paint(Canvas& canvas, const SheetField& shape) {
@@ -194,7 +193,7 @@ void paint(Canvas& canvas, const SheetField& shape) {
     const int right = pixel(box.right());
     const int bottom = pixel(box.bottom());
     if (shape.outlined) {
-        canvas.fill(left, top, right, bottom, kHairline);
+        canvas.fill(left, top, right, bottom, hairline);
         canvas.fill(left + line, top + line, right - line, bottom - line, shape.fill);
     } else {
         canvas.fill(left, top, right, bottom, shape.fill);
@@ -206,8 +205,8 @@ void paint(Canvas& canvas, TextPainter& painter, const SheetText& shape) {
     const double width = text_width(shape.words, shape.size, shape.weight);
     if (shape.anchor == Anchor::end) x -= width;
     if (shape.anchor == Anchor::middle) x -= width / 2;
-    for (const PlacedGlyph& glyph : painter.paint(shape.words, shape.size * kScale, shape.weight,
-                                                  x * kScale, shape.baseline.y * kScale)) {
+    for (const PlacedGlyph& glyph : painter.paint(shape.words, shape.size * png_scale, shape.weight,
+                                                  x * png_scale, shape.baseline.y * png_scale)) {
         const GlyphImage& image = *glyph.image;
         for (int row = 0; row < image.height; ++row) {
             for (int column = 0; column < image.width; ++column) {
@@ -236,7 +235,7 @@ std::string swatches_svg(const Study& study) {
             if (field->outlined) {
                 const Box& box = field->box;  // the line lies within, as in the PNG
                 svg.box({box.x + 0.5, box.y + 0.5, box.width - 1, box.height - 1}, fill,
-                        hex(kHairline));
+                        hex(hairline));
             } else {
                 svg.box(field->box, fill);
             }
@@ -261,7 +260,7 @@ std::vector<std::uint8_t> swatches_png(const Study& study) {
             paint(canvas, painter, std::get<SheetText>(shape));
         }
     }
-    return encode_png(canvas, kPixelsPerMetre);
+    return encode_png(canvas, pixels_per_metre);
 }
 
 }  // namespace tincture

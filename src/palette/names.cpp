@@ -9,13 +9,13 @@
 namespace tincture {
 namespace {
 
-constexpr double kDegreesPerRadian = 57.29577951308232;
+constexpr double degrees_per_radian = 57.29577951308232;
 
 // atan of 0 to 1 in degrees by plain arithmetic: the C library's differs between processors, and a
 // name must not. Good to 1e-12 degrees.
 double small_atan_degrees(double t) {
-    constexpr double kTan22_5 = 0.41421356237309503;
-    const bool upper = t > kTan22_5;
+    constexpr double tan_22_5 = 0.41421356237309503;
+    const bool upper = t > tan_22_5;
     const double x = upper ? (t - 1.0) / (t + 1.0) : t;
     double power = x;
     double sum = x;
@@ -23,7 +23,7 @@ double small_atan_degrees(double t) {
         power *= -(x * x);
         sum += power / n;
     }
-    return (upper ? 45.0 : 0.0) + sum * kDegreesPerRadian;
+    return (upper ? 45.0 : 0.0) + sum * degrees_per_radian;
 }
 
 // Hue angle in CIELAB, 0 to below 360 degrees; 0 where a and b are both 0.
@@ -101,8 +101,8 @@ using Group = std::vector<std::size_t>;
 // Adds figures to the names of `group`, which are equal, with as few decimals as tell each from all
 // that are still alike; figures of different length cannot be equal.
 void tell_apart(std::span<const Lab> colours, std::vector<std::string>& names, Group group) {
-    constexpr int kMostDecimals = 9;
-    for (int decimals = 0; decimals <= kMostDecimals && !group.empty(); ++decimals) {
+    constexpr int most_decimals = 9;
+    for (int decimals = 0; decimals <= most_decimals && !group.empty(); ++decimals) {
         std::map<std::string, Group> namesakes;
         for (const std::size_t i : group) namesakes[figures(colours[i], decimals)].push_back(i);
         std::erase_if(group, [&](std::size_t i) {
@@ -114,7 +114,7 @@ void tell_apart(std::span<const Lab> colours, std::vector<std::string>& names, G
     }
     std::map<std::string, std::string> again;  // equal colours, each set of them by itself
     for (const std::size_t i : group) {
-        const std::string suffix = figures(colours[i], kMostDecimals);
+        const std::string suffix = figures(colours[i], most_decimals);
         names[i] += suffix + again[suffix];
         again[suffix] += " again";
     }

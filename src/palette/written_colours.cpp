@@ -38,7 +38,7 @@ Rgb8 nearest_neighbour(Rgb8 from, const Lab& wanted, const ColourSpace& space,
 // Rounding device values is not yet the nearest in Lab, and a profile's way back from Lab may be
 // coarse: walk downhill from there.
 Rgb8 nearest_free(const Lab& wanted, const ColourSpace& space, const std::set<Rgb8>& taken) {
-    constexpr int longest_walk = 16;
+    constexpr int longest_walk = 1024;  // for where all around is taken; else it ends at the bottom
     Rgb8 at = space.to_rgb8(wanted);
     for (int step = 0; step < longest_walk; ++step) {
         const Rgb8 next = nearest_neighbour(at, wanted, space, taken);

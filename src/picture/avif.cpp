@@ -6,6 +6,7 @@
 #include <memory>
 #include <vector>
 
+#include "picture/av1_frame_size.h"
 #include "picture/exif.h"
 #include "picture/formats.h"
 #include "picture/made_profile.h"
@@ -22,6 +23,32 @@ struct DestroyImage {
 };
 using Decoder = std::unique_ptr<avifDecoder, DestroyDecoder>;
 using Image = std::unique_ptr<avifImage, DestroyImage>;
+
+// The file as libavif reads it. While it decodes, every piece that it asks for is the stream of an
+// image, whose frames may be larger than the file says outside of it; its AV1 decoder has no limit.
+struct Input {
+    avifIO io{};
+    const Source* source = nullptr;
+    bool decoding = false;
+    std::optional<Av1FrameSize> too_large;
+};
+
+avifResult on_read(avifIO* io, std::uint32_t, std::uint64_t offset, std::size_t size,
+                   avifROData* out) {
+    auto* input = static_cast<Input*>(io->data);
+    const auto& bytes = input->source->bytes;
+    if (offset > bytes.size()) return AVIF_RESULT_IO_ERROR;
+    const auto piece = bytes.subspan(offset, std::min<std::size_t>(size, bytes.size() - offset));
+    out->data = piece.data();
+    out->size = piece.size();
+    if (!input->decoding) return AVIF_RESULT_OK;
+    const auto frame = av1_frame_size(piece);
+    if (frame && frame->width > input->source->max_pixels / frame->height) {
+        input->too_large = frame;
+        return AVIF_RESULT_IO_ERROR;
+    }
+    return AVIF_RESULT_OK;
+}
 
 // The largest size that the file claims anywhere, for files that libavif refuses without saying
 // why: boxes "ispe" (ISO/IEC 23008-12), of four bytes name, four of version, then width and height.
@@ -49,9 +76,11 @@ void check_claimed_sizes(const Source& source) {
         source, std::string("an AVIF that cannot be decoded (") + avifResultToString(result) + ")");
 }
 
-Decoder parse(const Source& source) {
+Decoder parse(const Source& source, Input& input) {
     Decoder decoder(avifDecoderCreate());
     if (decoder == nullptr) throw std::bad_alloc();
+    // The other decoder is faster, but prints what it dislikes about a damaged file on stderr.
+    decoder->codecChoice = AVIF_CODEC_CHOICE_AOM;
     // libavif takes no limit above its own.
     decoder->imageSizeLimit = static_cast<std::uint32_t>(
         std::min<std::uint64_t>(source.max_pixels, AVIF_DEFAULT_IMAGE_SIZE_LIMIT));
@@ -60,9 +89,13 @@ Decoder parse(const Source& source) {
     // Fields that older encoders left out and that no pixel depends on.
     decoder->strictFlags = AVIF_STRICT_CLAP_VALID;
     if (decoder->imageSizeLimit == 0) check_claimed_sizes(source);
-    avifResult result =
-        avifDecoderSetIOMemory(decoder.get(), source.bytes.data(), source.bytes.size());
-    if (result == AVIF_RESULT_OK) result = avifDecoderParse(decoder.get());
+    input.source = &source;
+    input.io.read = on_read;
+    input.io.sizeHint = source.bytes.size();
+    input.io.persistent = AVIF_TRUE;
+    input.io.data = &input;
+    avifDecoderSetIO(decoder.get(), &input.io);
+    const avifResult result = avifDecoderParse(decoder.get());
     if (result != AVIF_RESULT_OK) give_up(source, result);
     check_size(source, decoder->image->width, decoder->image->height);
     if (decoder->imageCount > 1) {
@@ -219,9 +252,12 @@ void take_colours(const Source& source, const avifImage& image, Picture& picture
 }  // namespace
 
 Stored read_avif(const Source& source) {
-    const Decoder decoder = parse(source);
+    Input input;  // outlives the decoder
+    const Decoder decoder = parse(source, input);
     throw_if_cancelled();
+    input.decoding = true;
     const avifResult result = avifDecoderNextImage(decoder.get());
+    if (input.too_large) check_size(source, input.too_large->width, input.too_large->height);
     if (result != AVIF_RESULT_OK) give_up(source, result);
     const avifImage& image = *decoder->image;
     check_size(source, image.width, image.height);

@@ -3,10 +3,11 @@
 
 #include <cstddef>
 #include <cstdint>
-#include <memory>
 #include <optional>
 #include <string>
 #include <vector>
+
+#include "support/large_block.h"
 
 namespace tincture {
 
@@ -22,25 +23,9 @@ struct Resolution {
     double y_dpi;
 };
 
-// A fixed block of samples that is not zeroed first: pictures are large and readers fill them whole.
+// Pictures are large: their samples lie in huge pages.
 template <typename T>
-class Samples {
-  public:
-    Samples() = default;
-    explicit Samples(std::size_t size)
-        : data_(std::make_unique_for_overwrite<T[]>(size)), size_(size) {}
-
-    [[nodiscard]] T* data() noexcept { return data_.get(); }
-    [[nodiscard]] const T* data() const noexcept { return data_.get(); }
-    [[nodiscard]] std::size_t size() const noexcept { return size_; }
-    [[nodiscard]] bool empty() const noexcept { return size_ == 0; }
-    [[nodiscard]] T& operator[](std::size_t i) noexcept { return data_[i]; }
-    [[nodiscard]] const T& operator[](std::size_t i) const noexcept { return data_[i]; }
-
-  private:
-    std::unique_ptr<T[]> data_;
-    std::size_t size_ = 0;
-};
+using Samples = LargeArray<T>;
 
 // Rows from the top, pixels from the left, samples of a pixel side by side, no padding. Orientation
 // is applied; colours are not premultiplied. Exactly one of samples8 and samples16 is filled, with

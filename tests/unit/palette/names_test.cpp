@@ -87,6 +87,23 @@ TEST(Names, FiguresOfDifferentLengthDoNotMeet) {
     EXPECT_EQ(std::set<std::string>(names.begin(), names.end()).size(), labs.size());
 }
 
+// Against the C library's atan2, which agrees far better than to six decimals.
+TEST(Names, HueAngleIsExactAllRound) {
+    for (int degree = 0; degree < 360; degree += 3) {
+        const double angle = (degree + 0.123457) * 3.14159265358979324 / 180;
+        const double a = 50 * std::cos(angle);
+        const double b = 50 * std::sin(angle);
+        const std::vector<Lab> labs = {{60.000001, a, b}, {60.000002, a, b}};
+        const std::string name = name_colours(labs)[0];
+        EXPECT_NEAR(std::stod(name.substr(name.rfind(' '))), degree + 0.123457, 1.1e-6) << name;
+    }
+}
+
+TEST(Names, HueFigureNeverSays360) {
+    const std::vector<Lab> labs = {{70, 30, -0.1}, {60, 30, 0}};
+    EXPECT_EQ(name_colours(labs)[0], "mid soft pink 70 30 0");
+}
+
 TEST(Names, EqualColoursStillDiffer) {
     const std::vector<Lab> labs(4, Lab{40, 10, 10});
     const auto names = name_colours(labs);

@@ -233,6 +233,26 @@ TEST(Avif, ColoursByCodeOrProfile) {
     EXPECT_THAT(error_of(encode_avif(spec, noise(count * 3))).what(), HasSubstr("CICP 10/2"));
 }
 
+// The stream inside claims more than the file outside: refused before it is decoded.
+TEST(Avif, StreamLargerThanItsFileIsALimit) {
+    for (const bool alpha : {false, true}) {
+        AvifSpec spec = spec_of();
+        if (alpha) spec.finish = with_alpha(std::vector<std::uint16_t>(count, 7));
+        Bytes file = encode_avif(spec, noise(count * 3));
+        const std::string name = "ispe";
+        const Bytes sides = joined({big(4, 4), big(4, 4)});
+        for (auto at = file.begin();;) {
+            at = std::search(at, file.end(), name.begin(), name.end());
+            if (at == file.end()) break;
+            std::copy(sides.begin(), sides.end(), at + 8);
+            at += 8;
+        }
+        const Error error = error_of(file, {.max_pixels = 100});
+        EXPECT_EQ(error.kind(), ErrorKind::limit);
+        EXPECT_THAT(error.what(), HasSubstr("18 x 14 pixels"));
+    }
+}
+
 TEST(Avif, HugeSidesAreALimit) {
     Bytes file = encode_avif(spec_of(), noise(count * 3));
     const std::string name = "ispe";

@@ -1,36 +1,33 @@
 #include "made_files.h"
 
 #include <gtest/gtest.h>
-#include <stdlib.h>
+#include <sys/mman.h>
+#include <unistd.h>
 
 #include <cmath>
 #include <cstring>
 #include <filesystem>
-#include <fstream>
 #include <random>
 
 namespace tincture::testing_pictures {
 namespace {
 
-// A file that is gone when the test is over.
+// A file in memory, which has a path all the same.
 class MadeFile {
   public:
-    explicit MadeFile(const Bytes& bytes) {
-        std::string name = ::testing::TempDir() + "tincture-XXXXXX";
-        const int descriptor = ::mkstemp(name.data());
-        EXPECT_GE(descriptor, 0);
-        ::close(descriptor);
-        path_ = name;
-        std::ofstream(path_, std::ios::binary)
-            .write(reinterpret_cast<const char*>(bytes.data()),
-                   static_cast<std::streamsize>(bytes.size()));
+    explicit MadeFile(const Bytes& bytes) : descriptor_(::memfd_create("made", MFD_CLOEXEC)) {
+        EXPECT_GE(descriptor_, 0);
+        EXPECT_EQ(::write(descriptor_, bytes.data(), bytes.size()),
+                  static_cast<ssize_t>(bytes.size()));
+        path_ = "/proc/self/fd/" + std::to_string(descriptor_);
     }
-    ~MadeFile() { std::filesystem::remove(path_); }
+    ~MadeFile() { ::close(descriptor_); }
     MadeFile(const MadeFile&) = delete;
     MadeFile& operator=(const MadeFile&) = delete;
     [[nodiscard]] const std::filesystem::path& path() const { return path_; }
 
   private:
+    int descriptor_;
     std::filesystem::path path_;
 };
 

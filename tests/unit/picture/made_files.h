@@ -2,13 +2,14 @@
 // disk; and reading them back.
 #pragma once
 
+#include <cstdio>
+// jpeglib.h needs <cstdio> before it.
 #include <avif/avif.h>
 #include <jpeglib.h>
 #include <png.h>
 #include <tiffio.h>
 
 #include <cstdint>
-#include <cstdio>
 #include <functional>
 #include <optional>
 #include <string>

@@ -63,7 +63,7 @@ TEST(Pnm, SaysHowManyBytesAreMissing) {
     EXPECT_THAT(error_of(file("P6 20 20 255\n", Bytes(100))).what(),
                 HasSubstr("is cut short: a PNM that ends after 113 bytes, of 1213"));
     EXPECT_THAT(error_of(file("P2 2 2 255\n1 2 3 ")).what(), HasSubstr("cut short"));
-    EXPECT_THAT(error_of(file("P6 20")).what(), HasSubstr("in its header"));
+    EXPECT_THAT(error_of(file("P6 20")).what(), HasSubstr("after 5 bytes, before its height"));
 }
 
 }  // namespace

@@ -1,0 +1,61 @@
+"""Checks the surroundings, and runs that several tests look at."""
+import os
+
+import pytest
+
+import pictures
+import running
+
+
+def pytest_configure():
+    if not os.access(running.TINCTURE, os.X_OK):
+        raise pytest.UsageError("set TINCTURE to the path of the program to test")
+
+
+class Case:
+    """A picture, the run on it, and its pixels."""
+
+    def __init__(self, folder, pixels, *options, **png):
+        self.pixels = pixels
+        self.picture = pictures.save_png(folder / "picture.png", pixels, **png)
+        self.folder = running.reduce(self.picture, *options, cwd=folder)
+        self.study = running.study_of(self.folder)
+
+
+@pytest.fixture(scope="session")
+def poster(tmp_path_factory):
+    return Case(tmp_path_factory.mktemp("poster"), pictures.poster(), dpi=(300, 300))
+
+
+@pytest.fixture(scope="session")
+def noisy(tmp_path_factory):
+    return Case(tmp_path_factory.mktemp("noisy"), pictures.noisy())
+
+
+@pytest.fixture(scope="session")
+def flat(tmp_path_factory):
+    return Case(tmp_path_factory.mktemp("flat"), pictures.flat_areas())
+
+
+@pytest.fixture(scope="session")
+def deep(tmp_path_factory):
+    return Case(tmp_path_factory.mktemp("deep"), pictures.deep())
+
+
+@pytest.fixture(scope="session")
+def grey(tmp_path_factory):
+    return Case(tmp_path_factory.mktemp("grey"), pictures.grey())
+
+
+@pytest.fixture(scope="session")
+def wide(tmp_path_factory):
+    return Case(tmp_path_factory.mktemp("wide"), pictures.vivid(), profile=pictures.wide_profile(), dpi=(240, 120))
+
+
+@pytest.fixture(scope="session")
+def big_picture(tmp_path_factory):
+    """Twelve megapixels of noise: slow enough to be watched."""
+    folder = tmp_path_factory.mktemp("big")
+    tile = pictures.noisy(1000, 750, spread=40.0)
+    rows = pictures.np.concatenate([pictures.np.roll(tile, 17 * i, axis=1) ^ i for i in range(4)], axis=0)
+    return pictures.save_png(folder / "big.png", pictures.np.concatenate([rows ^ (16 * i) for i in range(4)], axis=1))
