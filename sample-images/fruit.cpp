@@ -48,7 +48,7 @@ class Orange : public Body {
 
     [[nodiscard]] double relief(Vec p) const override {
         const Vec q = p - centre_;
-        return -0.030 * pits(q) + 0.022 * noise(q.x * 1.8, q.y * 1.8, q.z * 1.8, seed_ + 2);
+        return -0.017 * pits(q) + 0.020 * noise(q.x * 1.8, q.y * 1.8, q.z * 1.8, seed_ + 2);
     }
 
     [[nodiscard]] Surface surface(Vec p) const override {
@@ -65,8 +65,8 @@ class Orange : public Body {
   protected:
     // 1 in a pore of the skin. Two turned grids hide the grid of the noise.
     [[nodiscard]] double pits(Vec q) const {
-        const Vec a = skew_.to_local(q) * 6.1;
-        const Vec b = skew_.to_world(q) * 4.7;
+        const Vec a = skewed(q) * 7.9;
+        const Vec b = skewed(skewed(q)) * 6.3;
         const double sum = noise(a.x, a.y, a.z, seed_ + 1) + noise(b.x, b.y, b.z, seed_ + 4);
         return smooth_step(0.0, 1.0, sum);
     }
@@ -75,7 +75,6 @@ class Orange : public Body {
     double radius_;
     std::uint64_t seed_;
     Vec stalk_;
-    Frame skew_{normalised({0.48, 0.64, 0.60})};
 };
 
 class HalfOrange : public Orange {

@@ -115,7 +115,7 @@ std::vector<std::uint8_t> expose(const std::vector<Vec>& light) {
             const Vec l = light[static_cast<std::size_t>(y) * width + x] * corner;
             for (const double channel : {l.x, l.y, l.z}) {
                 // Photons arrive one by one, and reading them out adds its own noise.
-                const double spread = std::sqrt(0.00022 * channel + 0.0000016);
+                const double spread = std::sqrt(0.00040 * channel + 0.0000030);
                 const double value = developed(std::max(0.0, channel + spread * random.normal()));
                 rgb.push_back(static_cast<std::uint8_t>(std::floor(value * 255 + 0.5)));
             }

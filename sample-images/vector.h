@@ -68,4 +68,10 @@ struct Frame {
     [[nodiscard]] Vec to_local(Vec v) const { return {dot(v, side), dot(v, up), dot(v, front)}; }
 };
 
+// The point in a grid that stands askew, so that noise does not line up with the things it is on.
+[[nodiscard]] inline Vec skewed(Vec p) {
+    static const Frame frame(normalised({0.48, 0.64, 0.60}));
+    return frame.to_local(p);
+}
+
 }  // namespace tincture::samples

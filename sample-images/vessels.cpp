@@ -89,14 +89,16 @@ class Jug : public Body {
         const Vec q = p - foot_;
         // Rings left by the hands, and a grain in the bare clay.
         const double rings = 0.018 * noise(0, q.y * 1.6, 0, 31) + 0.010 * noise(0, q.y * 5, 0, 32);
-        const double grain = glazed(q) < 0.5 ? 0.012 * noise(q.x * 9, q.y * 9, q.z * 9, 33) : 0;
+        const Vec fine = skewed(q) * 9;
+        const double grain = glazed(q) < 0.5 ? 0.012 * noise(fine.x, fine.y, fine.z, 33) : 0;
         return rings + grain + 0.006 * fractal_noise(q.x, q.y, q.z, 3, 34);
     }
 
     [[nodiscard]] Surface surface(Vec p) const override {
         const Vec q = p - foot_;
         const double cloud = fractal_noise(q.x * 0.30, q.y * 0.30, q.z * 0.30, 5, 35);
-        const double speck = noise(q.x * 4.5, q.y * 4.5, q.z * 4.5, 36);
+        const Vec spot = skewed(q) * 4.5;
+        const double speck = noise(spot.x, spot.y, spot.z, 36);
         const double cover = glazed(q);
         const Vec clay = mixed({0.30, 0.15, 0.085}, {0.40, 0.22, 0.13}, 0.5 + cloud);
         // Thin glaze breaks brown at the lip and along the lower edge.
@@ -173,7 +175,8 @@ class Bowl : public Body {
     [[nodiscard]] Surface surface(Vec p) const override {
         const Vec q = p - foot_;
         const double cloud = fractal_noise(q.x * 0.4, q.y * 0.4, q.z * 0.4, 4, 43);
-        const double speck = noise(q.x * 5, q.y * 5, q.z * 5, 44);
+        const Vec spot = skewed(q) * 5;
+        const double speck = noise(spot.x, spot.y, spot.z, 44);
         Vec colour = mixed({0.63, 0.57, 0.46}, {0.74, 0.69, 0.58}, 0.5 + cloud);
         colour = mixed(colour, {0.22, 0.13, 0.07}, 0.75 * smooth_step(0.62, 0.74, speck));
         const double rim = smooth_step(height_ - 0.42, height_ - 0.1, q.y + 0.10 * cloud);

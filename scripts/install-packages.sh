@@ -13,7 +13,7 @@ build_packages=(
     libcli11-dev nlohmann-json3-dev libstb-dev fonts-roboto-unhinted
 )
 test_packages=(
-    libgtest-dev libgmock-dev libbenchmark-dev
+    libgtest-dev libgmock-dev
     libopencv-core-dev libopencv-imgcodecs-dev  # what the benchmarks compare with
     python3 python3-pytest python3-numpy python3-pil python3-jsonschema
     clang-14 libclang-rt-14-dev clang-format-14

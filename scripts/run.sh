@@ -9,7 +9,7 @@ if [ $# -gt 1 ]; then
     echo "usage: scripts/run.sh [PICTURE]" >&2
     exit 2
 fi
-picture=${1:-$root/sample-images/SAMPLE_POSTER}
+picture=${1:-$root/sample-images/lantern-regatta-poster.png}
 case "$picture" in -*) picture=./$picture ;; esac
 
 echo "1. Debian packages"

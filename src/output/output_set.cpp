@@ -240,6 +240,7 @@ void OutputSet::write(const std::string& name, const std::function<void(const Pa
         writer(staged);
     } catch (const Error& error) {
         if (error.subject() != staged.string()) throw;
+        if (error.kind() == ErrorKind::output) refuse_output(plan_.folder / name, error.what());
         throw Error(error.kind(), (plan_.folder / name).string(), error.what());
     }
 }

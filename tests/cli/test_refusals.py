@@ -84,6 +84,7 @@ def test_full_disk(place, size):
     assert (status, out, listing) == (1, "", ""), err
     assert err.startswith("tincture: out") and err.count("\n") == 1
     assert "free some space" in err or "No space" in err
+    assert "--out" in err
 
 
 @pytest.mark.skipif(not shutil.which("unshare"), reason="needs unshare of util-linux")

@@ -337,7 +337,8 @@ TEST(OutputSet, NamesTheFileAsTheUserKnowsIt) {
         throw Error(ErrorKind::output, path.string(), "cannot be written: the disk is full");
     };
     EXPECT_EQ(refusal([&] { set.write("a.png", fail); }),
-              (temporary / "out/a.png").string() + ": cannot be written: the disk is full");
+              (temporary / "out/a.png").string() +
+                  ": cannot be written: the disk is full; choose another folder with --out");
     set.write("a.png", [](const fs::path& path) { put(path, "png"); });
     set.commit();
     EXPECT_EQ(text_of(temporary / "out/a.png"), "png");
