@@ -2,6 +2,7 @@
 // it beside these and name it in collect_votes().
 #pragma once
 
+#include <optional>
 #include <span>
 #include <vector>
 
@@ -14,6 +15,13 @@ namespace tincture {
 
 // The count at which the logarithm of the error stops falling steeply.
 [[nodiscard]] Vote knee_vote(const Study& study);
+
+// The counts around the knee that are nearly as far below the chord: wide where the bend is soft.
+struct CountRange {
+    int low;
+    int high;
+};
+[[nodiscard]] std::optional<CountRange> knee_range(const Study& study);
 
 // The smallest count at which 95 % of the pixels are within the tolerance.
 [[nodiscard]] Vote tolerance_vote(const Study& study);

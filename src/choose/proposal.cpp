@@ -21,7 +21,7 @@ std::optional<int> count_of(const std::vector<Vote>& votes, std::string_view cri
 }
 
 // Applies the rule; fills all of the proposal but the sentence and returns why in words.
-std::string decide(Proposal& proposal, int sweep_end) {
+std::string decide(Proposal& proposal, const Study& study, int sweep_end) {
     const std::optional<int> knee = count_of(proposal.votes, "knee");
     const std::optional<int> tolerance = count_of(proposal.votes, "tolerance");
     const std::optional<int> distinct = count_of(proposal.votes, "distinct colours");
@@ -39,8 +39,14 @@ std::string decide(Proposal& proposal, int sweep_end) {
         set(*tolerance, *knee, 0.6);
         return "there the error curve stops falling steeply and the tolerance is met";
     }
+    if (knee) {
+        const CountRange bend = knee_range(study).value_or(CountRange{*knee, *knee});
+        proposal.low = std::min(bend.low, tolerance.value_or(bend.low));
+        proposal.high = std::max(bend.high, tolerance.value_or(bend.high));
+        proposal.count = *knee;
+        proposal.confidence = tolerance ? 0.4 : 0.3;
+    }
     if (knee && tolerance) {
-        set(*knee, *tolerance, 0.4);
         return "there the error curve stops falling steeply; the evidence disagrees, as the "
                "tolerance "
                "is met " +
@@ -48,7 +54,6 @@ std::string decide(Proposal& proposal, int sweep_end) {
                std::to_string(*tolerance);
     }
     if (knee) {
-        set(*knee, *knee, 0.3);
         return "there the error curve stops falling steeply, but no count up to " +
                std::to_string(sweep_end) + " meets the tolerance";
     }
@@ -66,7 +71,7 @@ Proposal propose(const Study& study) {
     Proposal proposal;
     proposal.votes = collect_votes(study);
     const std::span<const CurvePoint> curve = swept(study);
-    const std::string why = decide(proposal, curve.back().count);
+    const std::string why = decide(proposal, study, curve.back().count);
 
     const int low = std::max(study.at_least, curve.front().count);
     const int high = std::max(low, std::min(study.at_most, curve.back().count));

@@ -19,12 +19,15 @@
 #include "picture/resolution.h"
 #include "support/cancel.h"
 #include "support/error.h"
+#include "support/parallel.h"
 
 namespace tincture {
 namespace {
 
-constexpr std::size_t idat_size = std::size_t{1} << 20;
-constexpr std::uint32_t rows_per_check = 64;
+// Rows are compressed in bands of about this many bytes, several at a time. Where a band ends
+// depends on the picture alone, so that the file does not depend on the number of threads.
+constexpr std::size_t band_bytes = std::size_t{512} << 10;
+constexpr std::size_t bands_at_once = 64;
 
 struct CloseFile {
     void operator()(std::FILE* file) const { std::fclose(file); }
@@ -106,9 +109,50 @@ void pack_row(const std::uint8_t* labels, std::size_t count, int bits, std::uint
             return pack<1>(labels, count, to);
         case 2:
             return pack<2>(labels, count, to);
-        default:
+        case 4:
             return pack<4>(labels, count, to);
+        default:
+            std::memcpy(to, labels, count);
+            return;
     }
+}
+
+// A part of the zlib stream that all IDAT chunks make up together.
+struct Band {
+    std::vector<std::uint8_t> data;
+    uLong checksum = 0;  // Adler-32 of what was compressed
+    std::size_t raw_bytes = 0;
+};
+
+// Compresses rows [first, last) of a picture, without filter. Runs are all that is looked for, so
+// nothing is lost by not looking into the band before.
+Band compress_rows(const IndexedPicture& picture, std::size_t first, std::size_t last) {
+    const int bits = bits_for(picture.palette.size());
+    const std::size_t row_bytes = (picture.width * static_cast<std::size_t>(bits) + 7) / 8;
+    std::vector<std::uint8_t> raw((row_bytes + 1) * (last - first));
+    for (std::size_t y = first; y < last; ++y) {
+        std::uint8_t* row = &raw[(y - first) * (row_bytes + 1)];  // begins with 0: no filter
+        pack_row(picture.labels + y * picture.width, picture.width, bits, row + 1);
+    }
+    z_stream stream{};
+    constexpr int without_header = -15;
+    constexpr int usual_memory = 8;
+    if (deflateInit2(&stream, 1, Z_DEFLATED, without_header, usual_memory, Z_RLE) != Z_OK) {
+        throw std::bad_alloc();
+    }
+    Band band;
+    band.raw_bytes = raw.size();
+    band.checksum = adler32_z(adler32(0, nullptr, 0), raw.data(), raw.size());
+    constexpr std::size_t flush_bytes = 16;
+    band.data.resize(deflateBound(&stream, raw.size()) + flush_bytes);
+    stream.next_in = raw.data();
+    stream.avail_in = static_cast<uInt>(raw.size());
+    stream.next_out = band.data.data();
+    stream.avail_out = static_cast<uInt>(band.data.size());
+    deflate(&stream, last == picture.height ? Z_FINISH : Z_SYNC_FLUSH);
+    band.data.resize(stream.total_out);
+    deflateEnd(&stream);
+    return band;
 }
 
 // The data of an iCCP chunk. libpng's own way would drop profiles that it does not like.
@@ -138,7 +182,7 @@ class IndexedPngWriter {
         Handle handle(output_);
         write_head(handle);
         write_rows(handle);
-        if (!succeeds(handle.png, [&] { png_write_end(handle.png, handle.info); })) give_up();
+        write_chunk(handle, "IEND", {});
         // Only closing tells whether the last bytes found their place.
         errno = 0;
         if (std::fclose(file_.release()) != 0) give_up(errno);
@@ -147,6 +191,7 @@ class IndexedPngWriter {
   private:
     void write_head(const Handle& handle);
     void write_rows(const Handle& handle);
+    void write_chunk(const Handle& handle, const char* name, std::span<const std::uint8_t> data);
     [[noreturn]] void give_up() { give_up(output_.error); }
     [[noreturn]] void give_up(int error) {
         if (error == 0) throw std::bad_alloc();
@@ -176,10 +221,6 @@ void IndexedPngWriter::write_head(const Handle& handle) {
 
     const bool written = succeeds(png, [&] {
         png_set_user_limits(png, PNG_UINT_31_MAX, PNG_UINT_31_MAX);
-        png_set_compression_level(png, 1);
-        png_set_compression_strategy(png, Z_RLE);
-        png_set_filter(png, PNG_FILTER_TYPE_BASE, PNG_FILTER_NONE);
-        png_set_compression_buffer_size(png, idat_size);
         png_set_IHDR(png, info, picture_.width, picture_.height, bits_for(picture_.palette.size()),
                      PNG_COLOR_TYPE_PALETTE, PNG_INTERLACE_NONE, PNG_COMPRESSION_TYPE_DEFAULT,
                      PNG_FILTER_TYPE_DEFAULT);
@@ -206,19 +247,43 @@ void IndexedPngWriter::write_head(const Handle& handle) {
     if (!written) give_up();
 }
 
+void IndexedPngWriter::write_chunk(const Handle& handle, const char* name,
+                                   std::span<const std::uint8_t> data) {
+    const bool written = succeeds(handle.png, [&] {
+        png_write_chunk(handle.png, reinterpret_cast<png_const_bytep>(name), data.data(),
+                        data.size());
+    });
+    if (!written) give_up();
+}
+
+// One IDAT chunk a band. libpng would compress on one thread.
 void IndexedPngWriter::write_rows(const Handle& handle) {
-    const int bits = bits_for(picture_.palette.size());
-    const std::size_t width = picture_.width;
-    std::vector<std::uint8_t> packed(bits == 8 ? 0
-                                               : width * static_cast<std::size_t>(bits) / 8 + 1);
-    for (std::uint32_t y = 0; y < picture_.height; ++y) {
-        if (y % rows_per_check == 0) throw_if_cancelled();
-        const std::uint8_t* row = picture_.labels + y * width;
-        if (bits != 8) {
-            pack_row(row, width, bits, packed.data());
-            row = packed.data();
+    const std::size_t height = picture_.height;
+    const std::size_t rows = std::clamp<std::size_t>(band_bytes / picture_.width, 1, height);
+    const std::size_t band_count = (height + rows - 1) / rows;
+    uLong checksum = adler32(0, nullptr, 0);
+    std::vector<Band> bands;
+    for (std::size_t start = 0; start < band_count; start += bands_at_once) {
+        bands.assign(std::min(bands_at_once, band_count - start), {});
+        parallel_for(bands.size(), [&](std::size_t i) {
+            throw_if_cancelled();
+            const std::size_t first = (start + i) * rows;
+            bands[i] = compress_rows(picture_, first, std::min(height, first + rows));
+        });
+        for (Band& band : bands) {
+            checksum =
+                adler32_combine(checksum, band.checksum, static_cast<z_off_t>(band.raw_bytes));
+            if (start == 0 && &band == &bands.front()) {
+                constexpr std::uint8_t zlib_header[] = {0x78, 0x01};
+                band.data.insert(band.data.begin(), std::begin(zlib_header), std::end(zlib_header));
+            }
+            if (start + bands.size() == band_count && &band == &bands.back()) {
+                for (const int shift : {24, 16, 8, 0}) {
+                    band.data.push_back(static_cast<std::uint8_t>(checksum >> shift));
+                }
+            }
+            write_chunk(handle, "IDAT", band.data);
         }
-        if (!succeeds(handle.png, [&] { png_write_row(handle.png, row); })) give_up();
     }
 }
 

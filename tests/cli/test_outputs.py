@@ -14,7 +14,7 @@ import pytest
 from PIL import Image
 
 import pictures
-from running import FILES, MANIFEST, PROJECT, contents, environment, names_in, reduce, run, study_of
+from running import FILES, MANIFEST, PROJECT, contents, environment, names_in, reduce, run, sanitized, study_of
 
 SWATCH_COLUMNS = ["index", "name", "hex", "L", "a", "b", "share", "pixels"]
 CURVE_COLUMNS = ["count", "evidence_mse", "mse", "mean_de00", "p95_de00", "max_de00", "closest_pair_de00"]
@@ -223,6 +223,7 @@ def test_threads_do_not_change_a_byte_of_a_picture_large_enough_to_be_cut_up(tmp
         assert contents(one) == contents(two)
 
 
+@pytest.mark.skipif(sanitized(), reason="the emulator has no room for AddressSanitizer's memory")
 @pytest.mark.skipif(not shutil.which("qemu-x86_64"), reason="needs the Debian package qemu-user")
 @pytest.mark.parametrize("name", ["poster", "noisy"])
 @pytest.mark.parametrize("cpu", ["core2duo", "Nehalem", "max"])
