@@ -236,7 +236,7 @@ void draw_badge(Canvas& canvas, const Faces& faces, Point centre) {
     for (const double side : {-1.0, 1.0}) {
         canvas.fill(circle({centre.x + side * (radius - 22), centre.y + 4}, 4), stock);
     }
-    canvas.fill(faces.black.text("7", {centre.x + 22, centre.y + 34}, 96, Align::centre), stock);
+    canvas.fill(faces.black.text("4", {centre.x + 22, centre.y + 34}, 96, Align::centre), stock);
     canvas.fill(faces.medium.text("No", {centre.x - 26, centre.y - 8}, 36, Align::centre), stock);
     canvas.fill(rectangle(centre.x - 43, centre.y + 2, centre.x - 9, centre.y + 5), stock);
 }
