@@ -78,7 +78,7 @@ Proposal propose(const Study& study) {
     const int wanted = proposal.count;
     proposal.count = std::min(std::clamp(wanted, low, high), curve.back().count);
     proposal.low = std::min(std::clamp(proposal.low, low, high), proposal.count);
-    proposal.high = std::max(std::min(proposal.high, high), proposal.count);
+    proposal.high = std::clamp(std::min(proposal.high, high), proposal.count, curve.back().count);
 
     const CurvePoint& at = curve_at(study, proposal.count);
     proposal.sentence = colours(proposal.count);

@@ -12,6 +12,10 @@ int roughly(double count) {
     return static_cast<int>(std::ceil(count / step) * step);
 }
 
+std::string colours(int count) {
+    return std::to_string(count) + (count == 1 ? " colour" : " colours");
+}
+
 }  // namespace
 
 Vote tolerance_vote(const Study& study) {
@@ -19,9 +23,9 @@ Vote tolerance_vote(const Study& study) {
     for (const CurvePoint& point : curve) {
         if (point.p95_de00 <= study.tolerance) {
             return {"tolerance", point.count,
-                    "from " + std::to_string(point.count) +
-                        " colours on, 95 % of the pixels are within " + fixed(point.p95_de00, 1) +
-                        " CIEDE2000 of the original (tolerance " + fixed(study.tolerance, 1) + ")"};
+                    "with " + colours(point.count) + ", 95 % of the pixels are within " +
+                        fixed(point.p95_de00, 1) + " CIEDE2000 of the original (tolerance " +
+                        fixed(study.tolerance, 1) + ")"};
         }
     }
     if (curve.empty()) return {"tolerance", std::nullopt, "nothing was measured"};
@@ -29,9 +33,9 @@ Vote tolerance_vote(const Study& study) {
     // 1982, IEEE Trans. Information Theory 28:139-149).
     const CurvePoint& last = curve.back();
     const double ratio = last.p95_de00 / study.tolerance;
-    std::string reason = "not met up to " + std::to_string(last.count) +
-                         " colours, where 95 % of the pixels are within " +
-                         fixed(last.p95_de00, 1) + " CIEDE2000: it would take a tolerance of that";
+    std::string reason = "not met up to " + colours(last.count) +
+                         ", where 95 % of the pixels are within " + fixed(last.p95_de00, 1) +
+                         " CIEDE2000: it would take a tolerance of that";
     if (ratio < 6) {
         reason += ", or roughly " + std::to_string(roughly(last.count * ratio * ratio * ratio)) +
                   " colours";

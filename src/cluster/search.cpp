@@ -35,8 +35,19 @@ struct BestSplit {
     int cluster = -1;
     Split split;
 };
+
+// The points of a kept centre may all lie in one place beside it: that place is worth a centre.
+Split split_from_kept(const WeightedPoints& points, const Members& members, std::size_t cluster) {
+    Split split;
+    split.gain = members.scatter[cluster];
+    const std::size_t i = members.index[members.start[cluster]];
+    for (int d = 0; d < points.dims; ++d) split.low.push_back(points.plane(d)[i]);
+    split.high = split.low;
+    return split;
+}
+
 // The clusters whose split gains most, at most `wanted`, best first.
-std::vector<BestSplit> best_splits(const WeightedPoints& points, const Centres& centres,
+std::vector<BestSplit> best_splits(const WeightedPoints& points, const Centres& centres, int kept,
                                    const Members& members, std::size_t wanted) {
     std::vector<BestSplit> best;
     for (int k = 0; k < centres.count; ++k) {
@@ -45,6 +56,9 @@ std::vector<BestSplit> best_splits(const WeightedPoints& points, const Centres& 
         if (best.size() == wanted && members.scatter[at] <= best.back().split.gain) continue;
         Split split = split_cluster(points, members.index.data() + members.start[at],
                                     members.start[at + 1] - members.start[at]);
+        if (split.gain <= 0 && k < kept && members.scatter[at] > 0) {
+            split = split_from_kept(points, members, at);
+        }
         if (split.gain <= 0) continue;
         const auto place = std::find_if(best.begin(), best.end(), [&](const BestSplit& other) {
             return split.gain > other.split.gain;
@@ -110,7 +124,8 @@ std::vector<Exchange> exchanges(const WeightedPoints& points, const Centres& cen
                                 double current) {
     const Members members = members_of(points, centres);
     const std::vector<int> spares = least_missed(members, kept, exchange_choices);
-    const std::vector<BestSplit> splits = best_splits(points, centres, members, exchange_choices);
+    const std::vector<BestSplit> splits =
+        best_splits(points, centres, kept, members, exchange_choices);
     std::vector<Exchange> found;
     for (const int spare : spares) {
         for (const BestSplit& split : splits) {
@@ -191,7 +206,7 @@ Candidate step_down(const WeightedPoints& points, const Candidate& from, int kep
 
 bool add_centre(const WeightedPoints& points, Centres& centres, int kept) {
     const std::vector<BestSplit> best =
-        best_splits(points, centres, members_of(points, centres), 1);
+        best_splits(points, centres, kept, members_of(points, centres), 1);
     if (best.empty()) return false;
     apply_split(centres, best.front(), kept, -1);
     return true;

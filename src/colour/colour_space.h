@@ -10,9 +10,9 @@
 #include <string>
 #include <vector>
 
+#include "colour/colour_model.h"
 #include "colour/lab.h"
 #include "colour/rgb.h"
-#include "picture/picture.h"
 
 namespace tincture {
 

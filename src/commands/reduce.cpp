@@ -6,7 +6,7 @@
 #include "choose/measure.h"
 #include "choose/proposal.h"
 #include "cluster/sweep.h"
-#include "colour/picture_space.h"
+#include "picture/picture_space.h"
 #include "commands/progress_bar.h"
 #include "commands/summary.h"
 #include "histogram/colour_table.h"

@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <array>
 #include <cstring>
+#include <utility>
 
 #include "histogram/colour_table.h"
 #include "support/cancel.h"
@@ -14,8 +15,8 @@ namespace {
 
 constexpr std::uint64_t free_place = ~std::uint64_t{0};
 
-// Pictures below this size are counted in a hash table, which is small, and not in one place for
-// each of the 2^24 colours, which is quick once filled but must be walked through afterwards.
+// Smaller 8-bit RGB pictures are counted by sorting their pixels, larger ones in one place for each
+// of the 2^24 colours, which is quick once filled but must be walked through afterwards.
 constexpr std::size_t direct_from_pixels = 2'000'000;
 
 // Calls run(key, n) for each run of equal neighbours among the opaque pixels [begin, end).
@@ -69,6 +70,42 @@ CountedColours count_hashed(const Picture& picture, const Sample* samples, std::
     }
     if (all.size() > limit) return {{}, true};
     return {all.sorted(), false};
+}
+
+// Sorts 24-bit numbers by their low and then their high half, counting (radix sort).
+void sort_24_bits(std::vector<std::uint32_t>& numbers) {
+    std::vector<std::uint32_t> other(numbers.size());
+    for (const int shift : {0, 12}) {
+        std::array<std::size_t, 4096> next{};
+        for (const std::uint32_t n : numbers) ++next[n >> shift & 4095];
+        std::size_t start = 0;
+        for (std::size_t& place : next) start += std::exchange(place, start);
+        for (const std::uint32_t n : numbers) other[next[n >> shift & 4095]++] = n;
+        numbers.swap(other);
+    }
+}
+
+// For RGB with 8 bits: the opaque pixels sorted, equal ones counted.
+CountedColours count_sorted(const Picture& picture, std::size_t limit) {
+    throw_if_cancelled();
+    std::vector<std::uint32_t> numbers;
+    numbers.reserve(picture.pixel_count());
+    for (std::size_t i = 0; i < picture.pixel_count(); ++i) {
+        if (!picture.opaque.empty() && picture.opaque[i] == 0) continue;
+        const std::uint8_t* s = picture.samples8.data() + 3 * i;
+        numbers.push_back(std::uint32_t{s[0]} << 16 | std::uint32_t{s[1]} << 8 | s[2]);
+    }
+    sort_24_bits(numbers);
+    CountedColours counted;
+    for (std::size_t i = 0; i < numbers.size();) {
+        std::size_t end = i + 1;
+        while (end < numbers.size() && numbers[end] == numbers[i]) ++end;
+        const std::uint64_t n = numbers[i];
+        counted.colours.push_back({(n >> 16) << 32 | (n >> 8 & 0xFF) << 16 | (n & 0xFF), end - i});
+        i = end;
+    }
+    if (counted.colours.size() > limit) return {{}, true};
+    return counted;
 }
 
 // One place for each 24-bit colour, in the order of their keys.
@@ -138,6 +175,10 @@ CountedColours count_direct(const Picture& picture, std::size_t limit) {
 KeyCounter::KeyCounter() : places_(1 << 12, ColourCount{free_place, 0}), shift_(64 - 12) {}
 
 void KeyCounter::add(std::uint64_t key, std::uint64_t count) {
+    if (key == free_place) {
+        highest_ += count;
+        return;
+    }
     const std::size_t mask = places_.size() - 1;
     // Multiplicative hashing with the golden ratio, high bits.
     for (std::size_t at = key * 0x9E3779B97F4A7C15U >> shift_;; at = (at + 1) & mask) {
@@ -166,20 +207,22 @@ void KeyCounter::grow() {
 
 std::vector<ColourCount> KeyCounter::sorted() const {
     std::vector<ColourCount> colours;
-    colours.reserve(size_);
+    colours.reserve(size());
     std::copy_if(places_.begin(), places_.end(), std::back_inserter(colours),
                  [](const ColourCount& place) { return place.key != free_place; });
     std::sort(colours.begin(), colours.end(),
               [](const ColourCount& one, const ColourCount& two) { return one.key < two.key; });
+    if (highest_ > 0) colours.push_back({free_place, highest_});
     return colours;
 }
 
 CountedColours count_keys(const Picture& picture, std::size_t limit) {
     if (picture.bits == 16) return count_hashed(picture, picture.samples16.data(), limit);
-    if (picture.model == ColourModel::rgb && picture.pixel_count() >= direct_from_pixels) {
-        return count_direct(picture, limit);
+    if (picture.model != ColourModel::rgb) {
+        return count_hashed(picture, picture.samples8.data(), limit);
     }
-    return count_hashed(picture, picture.samples8.data(), limit);
+    return picture.pixel_count() >= direct_from_pixels ? count_direct(picture, limit)
+                                                       : count_sorted(picture, limit);
 }
 
 }  // namespace tincture

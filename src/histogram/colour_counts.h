@@ -15,19 +15,21 @@ struct ColourCount {
     std::uint64_t count;
 };
 
-// Keys and how often they were added: a hash table with open addressing. Any 64-bit key but the
-// highest, which marks a free place.
+// Keys and how often they were added: a hash table with open addressing.
 class KeyCounter {
   public:
     KeyCounter();
     void add(std::uint64_t key, std::uint64_t count);
-    [[nodiscard]] std::size_t size() const noexcept { return size_; }
+    [[nodiscard]] std::size_t size() const noexcept { return size_ + (highest_ > 0 ? 1 : 0); }
     [[nodiscard]] std::vector<ColourCount> sorted() const;  // ascending by key
 
   private:
     void grow();
     std::vector<ColourCount> places_;
-    std::size_t size_ = 0;
+    std::size_t size_ = 0;  // places in use
+    // How often the highest key was added: it marks free places and so has none (full ink of 16-bit
+    // CMYK).
+    std::uint64_t highest_ = 0;
     int shift_;
 };
 

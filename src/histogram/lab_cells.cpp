@@ -141,7 +141,8 @@ ColourTable count_lab_cells(const Picture& picture, const ColourSpace& space,
             if (!picture.opaque.empty() && picture.opaque[start + i] == 0) continue;
             add_colour(cells, edge, {lab[0][i], lab[1][i], lab[2][i]}, 1);
         }
-        while (cells.size() > max_cells) {
+        // The eight cells around the origin never become one.
+        while (cells.size() > std::max<std::size_t>(max_cells, 8)) {
             cells = doubled(cells, edge);
             edge *= 2;
         }

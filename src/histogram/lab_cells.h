@@ -12,8 +12,8 @@ void picture_to_lab(const Picture& picture, const ColourSpace& space, std::size_
                     std::size_t n, LabPlanes out);
 
 // As count_colours(), in cells of finest_cell_de on a side, doubled until there are no more than
-// `max_cells`. Keys are cell numbers. Reads every pixel through the profile: slow, but in bounded
-// memory.
+// `max_cells` (at least 8). Keys are cell numbers. Reads every pixel through the profile: slow, but
+// in bounded memory.
 [[nodiscard]] ColourTable count_lab_cells(const Picture& picture, const ColourSpace& space,
                                           std::size_t max_cells = 2'000'000);
 

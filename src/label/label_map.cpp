@@ -77,23 +77,30 @@ class LabelOfKey {
   public:
     LabelOfKey(const ColourTable& table, const std::vector<std::uint16_t>& label)
         : bits_(static_cast<int>(std::bit_width(table.size() * 2))),
-          places_(std::size_t{1} << bits_, Place{~0ULL, 0}) {
+          places_(std::size_t{1} << bits_, Place{free_place, 0}) {
         for (std::size_t i = 0; i < table.size(); ++i) {
+            const auto its_label = static_cast<std::uint8_t>(label[i]);
+            if (table.key[i] == free_place) {
+                highest_ = its_label;
+                continue;
+            }
             std::size_t at = start(table.key[i]);
-            while (places_[at].key != ~0ULL) at = next(at);
-            places_[at] = {table.key[i], static_cast<std::uint8_t>(label[i])};
+            while (places_[at].key != free_place) at = next(at);
+            places_[at] = {table.key[i], its_label};
         }
     }
 
     // 0 for a key that is not in the table: only pixels that are not opaque have one.
     [[nodiscard]] std::uint8_t operator[](std::uint64_t key) const {
+        if (key == free_place) return highest_;
         for (std::size_t at = start(key);; at = next(at)) {
             if (places_[at].key == key) return places_[at].label;
-            if (places_[at].key == ~0ULL) return 0;
+            if (places_[at].key == free_place) return 0;
         }
     }
 
   private:
+    static constexpr std::uint64_t free_place = ~std::uint64_t{0};
     struct Place {
         std::uint64_t key;
         std::uint8_t label;
@@ -105,6 +112,7 @@ class LabelOfKey {
 
     int bits_;
     std::vector<Place> places_;
+    std::uint8_t highest_ = 0;  // label of the highest key, which has no place
 };
 
 template <typename Sample>
@@ -112,8 +120,8 @@ void label_by_key(const Picture& picture, const Sample* samples, const LabelOfKe
                   std::uint8_t* out) {
     const int channels = channel_count(picture.model);
     for_each_stripe(picture.pixel_count(), [&](std::size_t begin, std::size_t end) {
-        std::uint64_t last_key = ~0ULL;
-        std::uint8_t last = 0;
+        std::uint64_t last_key = 0;
+        std::uint8_t last = label_of[last_key];
         for (std::size_t i = begin; i < end; ++i) {
             const std::uint64_t key =
                 colour_key(samples + i * static_cast<std::size_t>(channels), channels);

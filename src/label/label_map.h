@@ -3,9 +3,9 @@
 
 #include <cstdint>
 
-#include "choose/study.h"
 #include "colour/colour_space.h"
 #include "histogram/colour_table.h"
+#include "palette/palette.h"
 #include "picture/picture.h"
 
 namespace tincture {

@@ -39,7 +39,8 @@ bool has_proposal(const Study& study) {
 
 std::string range_words(const Proposal& proposal) {
     if (proposal.low == proposal.high) return "only " + std::to_string(proposal.low);
-    return std::to_string(proposal.low) + " to " + std::to_string(proposal.high);
+    const char* joined = proposal.high == proposal.low + 1 ? " or " : " to ";
+    return std::to_string(proposal.low) + joined + std::to_string(proposal.high);
 }
 
 std::string choice_words(const Study& study) {

@@ -13,7 +13,7 @@ namespace tincture {
 namespace {
 
 constexpr double foot_height = 26;  // pixels from the logarithmic part down to the foot
-constexpr double least_tick_distance = 18;
+constexpr double least_tick_distance = 15;
 
 double log10_plain(double value) {
     constexpr double ln_10 = 2.302585092994046;

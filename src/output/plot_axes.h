@@ -24,8 +24,9 @@ class LogAxis {
     [[nodiscard]] bool is_broken() const { return broken_; }
     [[nodiscard]] double break_position() const;
 
-    // 1, 2 and 5 times the powers of ten where they stand 18 pixels apart, else fewer, and more where
-    // these are under four; the foot below a break is "0", or "<0.01" where not all is 0 there.
+    // 1, 2 and 5 times the powers of ten where they stand 15 pixels apart, else fewer, and more
+    // where these are under four; the foot below a break is "0", or "<0.01" where not all is 0
+    // there.
     [[nodiscard]] std::vector<AxisTick> ticks() const;
 
   private:

@@ -75,26 +75,6 @@ std::string shortened(std::string_view utf8, double size, Weight weight, double 
     return to_utf8(with(fits));
 }
 
-std::vector<std::string> wrapped(std::string_view utf8, double size, Weight weight, double width) {
-    std::vector<std::string> lines;
-    std::string line;
-    while (!utf8.empty()) {
-        const std::size_t space = std::min(utf8.find(' '), utf8.size());
-        const std::string word(utf8.substr(0, space));
-        utf8.remove_prefix(std::min(space + 1, utf8.size()));
-        if (word.empty()) continue;
-        const std::string longer = line.empty() ? word : line + ' ' + word;
-        if (!line.empty() && text_width(longer, size, weight) > width) {
-            lines.push_back(line);
-            line = word;
-        } else {
-            line = longer;
-        }
-    }
-    if (!line.empty()) lines.push_back(line);
-    return lines;
-}
-
 const GlyphImage& TextPainter::image_of(int glyph, double size, Weight weight, int quarter) {
     const auto [entry, missing] = images_.try_emplace({glyph, size, weight, quarter});
     GlyphImage& image = entry->second;

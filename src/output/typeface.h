@@ -20,10 +20,6 @@ enum class Weight { regular, medium };
 [[nodiscard]] std::string shortened(std::string_view utf8, double size, Weight weight,
                                     double width);
 
-// `utf8` broken between words into lines of at most `width`; a longer word keeps its line.
-[[nodiscard]] std::vector<std::string> wrapped(std::string_view utf8, double size, Weight weight,
-                                               double width);
-
 // Grey coverage of one glyph, 0 to 255, rows from the top.
 struct GlyphImage {
     int left = 0;  // from the whole pixel of the pen

@@ -1,8 +1,10 @@
 #include "palette/written_colours.h"
 
 #include <algorithm>
+#include <array>
 #include <numeric>
 #include <set>
+#include <utility>
 
 #include "colour/delta_e.h"
 #include "palette/names.h"
@@ -13,39 +15,52 @@ namespace {
 // sRGB form and colour differ by rounding alone up to about this; beyond, sRGB cannot hold it.
 constexpr double rounding_de00 = 0.5;
 
-// The colour nearest to `wanted` among the 27 that differ from `from` by at most one step a channel
-// and are not taken; `from` itself if all are.
-Rgb8 nearest_neighbour(Rgb8 from, const Lab& wanted, const ColourSpace& space,
-                       const std::set<Rgb8>& taken) {
-    Rgb8 best = from;
-    double least = -1;
+// A colour with its distance to the one that is wanted; the nearer first, equally near ones by
+// colour.
+using Reached = std::pair<double, Rgb8>;
+
+// The 27 colours that differ from `from` by at most one step a channel, it among them; at a wall of
+// the space some come twice.
+std::array<Rgb8, 27> neighbours(Rgb8 from) {
     const auto stepped = [](std::uint8_t value, int step) {
         return static_cast<std::uint8_t>(std::clamp(value + step, 0, 255));
     };
+    std::array<Rgb8, 27> found;
     for (int i = 0; i < 27; ++i) {
-        const Rgb8 candidate = {stepped(from.r, i % 3 - 1), stepped(from.g, i / 3 % 3 - 1),
-                                stepped(from.b, i / 9 - 1)};
-        if (taken.contains(candidate)) continue;
-        const double difference = delta_e_76(space.lab_of(candidate), wanted);
-        if (least < 0 || difference < least || (difference == least && candidate < best)) {
-            least = difference;
-            best = candidate;
-        }
+        found[static_cast<std::size_t>(i)] = {
+            stepped(from.r, i % 3 - 1), stepped(from.g, i / 3 % 3 - 1), stepped(from.b, i / 9 - 1)};
     }
-    return best;
+    return found;
 }
 
 // Rounding device values is not yet the nearest in Lab, and a profile's way back from Lab may be
 // coarse: walk downhill from there.
-Rgb8 nearest_free(const Lab& wanted, const ColourSpace& space, const std::set<Rgb8>& taken) {
-    constexpr int longest_walk = 1024;  // for where all around is taken; else it ends at the bottom
-    Rgb8 at = space.to_rgb8(wanted);
-    for (int step = 0; step < longest_walk; ++step) {
-        const Rgb8 next = nearest_neighbour(at, wanted, space, taken);
-        if (next == at && !taken.contains(at)) break;
+Rgb8 nearest_of_all(const Lab& wanted, const ColourSpace& space) {
+    const auto reached = [&](Rgb8 colour) {
+        return Reached(delta_e_76(space.lab_of(colour), wanted), colour);
+    };
+    Reached at = reached(space.to_rgb8(wanted));
+    while (true) {
+        Reached next = at;
+        for (const Rgb8 colour : neighbours(at.second)) next = std::min(next, reached(colour));
+        if (next == at) return at.second;
         at = next;
     }
-    return at;
+}
+
+// The nearest that is not taken: outward from the nearest of all, the nearer ones first.
+Rgb8 nearest_free(const Lab& wanted, const ColourSpace& space, const std::set<Rgb8>& taken) {
+    std::set<Reached> front = {{0.0, nearest_of_all(wanted, space)}};
+    std::set<Rgb8> seen = {front.begin()->second};
+    while (taken.contains(front.begin()->second)) {
+        const Rgb8 at = front.begin()->second;
+        front.erase(front.begin());
+        for (const Rgb8 colour : neighbours(at)) {
+            if (!seen.insert(colour).second) continue;
+            front.insert({delta_e_76(space.lab_of(colour), wanted), colour});
+        }
+    }
+    return front.begin()->second;
 }
 
 }  // namespace
@@ -83,7 +98,7 @@ Palette make_palette(std::span<const Rgb8> written, std::span<const Lab> lab,
         swatch.kept = i < static_cast<std::size_t>(kept);
         swatch.srgb = written[i];
         if (!space.is_standard()) {
-            swatch.srgb = nearest_free(lab[i], srgb, {});
+            swatch.srgb = nearest_of_all(lab[i], srgb);
             const double off = delta_e_2000(lab[i], srgb.lab_of(swatch.srgb));
             if (off > rounding_de00) swatch.hex_de00 = off;
         }

@@ -5,10 +5,10 @@
 #include <span>
 #include <vector>
 
-#include "choose/study.h"
 #include "colour/colour_space.h"
 #include "colour/lab.h"
 #include "colour/rgb.h"
+#include "palette/palette.h"
 
 namespace tincture {
 

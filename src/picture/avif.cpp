@@ -79,8 +79,10 @@ void check_claimed_sizes(const Source& source) {
 Decoder parse(const Source& source, Input& input) {
     Decoder decoder(avifDecoderCreate());
     if (decoder == nullptr) throw std::bad_alloc();
-    // The other decoder is faster, but prints what it dislikes about a damaged file on stderr.
-    decoder->codecChoice = AVIF_CODEC_CHOICE_AOM;
+    // The faster decoder in libavif prints what it dislikes about a damaged file on stderr.
+    if (avifCodecName(AVIF_CODEC_CHOICE_AOM, AVIF_CODEC_FLAG_CAN_DECODE) != nullptr) {
+        decoder->codecChoice = AVIF_CODEC_CHOICE_AOM;
+    }
     // libavif takes no limit above its own.
     decoder->imageSizeLimit = static_cast<std::uint32_t>(
         std::min<std::uint64_t>(source.max_pixels, AVIF_DEFAULT_IMAGE_SIZE_LIMIT));

@@ -7,15 +7,10 @@
 #include <string>
 #include <vector>
 
+#include "colour/colour_model.h"
 #include "support/large_block.h"
 
 namespace tincture {
-
-enum class ColourModel { grey, rgb, cmyk };
-
-[[nodiscard]] constexpr int channel_count(ColourModel model) {
-    return model == ColourModel::grey ? 1 : model == ColourModel::rgb ? 3 : 4;
-}
 
 // Pixels per inch, both positive.
 struct Resolution {
@@ -42,9 +37,7 @@ struct Picture {
     std::vector<std::uint8_t> icc;  // embedded profile as found, unchecked; empty: none
     std::optional<Resolution> resolution;
 
-    [[nodiscard]] std::size_t pixel_count() const noexcept {
-        return std::size_t{width} * height;
-    }
+    [[nodiscard]] std::size_t pixel_count() const noexcept { return std::size_t{width} * height; }
 };
 
 }  // namespace tincture

@@ -1,101 +1,15 @@
 // TIFF through libtiff (TIFF 6.0 and BigTIFF): the first page only.
 #include <tiffio.h>
-#include <unistd.h>
 
 #include <algorithm>
-#include <cerrno>
-#include <cstdarg>
-#include <cstring>
-#include <memory>
 
 #include "picture/formats.h"
+#include "picture/tiff_file.h"
 #include "picture/tiff_layout.h"
 #include "support/cancel.h"
 
 namespace tincture::formats {
 namespace {
-
-// Memory that a decoder may take at once beyond the bytes of the file.
-constexpr std::uint64_t decoder_memory = std::uint64_t{256} << 20;
-
-// The file as libtiff reads it, and what libtiff said.
-struct Input {
-    int descriptor;
-    std::uint64_t size;
-    std::uint64_t position = 0;
-    bool decoding = false;  // pixels, not the directory
-    bool complained = false;
-};
-
-tmsize_t on_read(thandle_t handle, void* to, tmsize_t size) {
-    auto* input = static_cast<Input*>(handle);
-    tmsize_t done = 0;
-    while (done < size) {
-        const ssize_t got =
-            ::pread(input->descriptor, static_cast<char*>(to) + done,
-                    static_cast<std::size_t>(size - done), static_cast<off_t>(input->position));
-        if (got < 0 && errno == EINTR) continue;
-        if (got <= 0) break;
-        input->position += static_cast<std::uint64_t>(got);
-        done += got;
-    }
-    return done;
-}
-tmsize_t on_write(thandle_t, void*, tmsize_t) {
-    return -1;
-}
-toff_t on_seek(thandle_t handle, toff_t offset, int whence) {
-    auto* input = static_cast<Input*>(handle);
-    if (whence == SEEK_SET) input->position = offset;
-    if (whence == SEEK_CUR) input->position += offset;
-    if (whence == SEEK_END) input->position = input->size + offset;
-    return input->position;
-}
-int on_close(thandle_t) {
-    return 0;
-}
-toff_t on_size(thandle_t handle) {
-    return static_cast<Input*>(handle)->size;
-}
-int on_map(thandle_t, void**, toff_t*) {
-    return 0;
-}
-void on_unmap(thandle_t, void*, toff_t) {}
-
-// 1: the message is dealt with and goes nowhere else.
-int on_error(TIFF*, void* handle, const char*, const char*, std::va_list) {
-    static_cast<Input*>(handle)->complained = true;
-    return 1;
-}
-// Warnings about the directory are mostly tags of other programs. That a tag lies outside of the
-// file is none of those, and every warning about pixels means that some are made up.
-int on_warning(TIFF*, void* handle, const char*, const char* format, std::va_list) {
-    auto* input = static_cast<Input*>(handle);
-    if (input->decoding || std::strstr(format, "IO error") != nullptr) input->complained = true;
-    return 1;
-}
-
-struct Close {
-    void operator()(TIFF* tiff) const { TIFFClose(tiff); }
-};
-using Handle = std::unique_ptr<TIFF, Close>;
-
-Handle open(const Source& source, Input& input) {
-    const std::unique_ptr<TIFFOpenOptions, decltype(&TIFFOpenOptionsFree)> options(
-        TIFFOpenOptionsAlloc(), &TIFFOpenOptionsFree);
-    if (options == nullptr) throw std::bad_alloc();
-    TIFFOpenOptionsSetErrorHandlerExtR(options.get(), on_error, &input);
-    TIFFOpenOptionsSetWarningHandlerExtR(options.get(), on_warning, &input);
-    TIFFOpenOptionsSetMaxSingleMemAlloc(options.get(),
-                                        static_cast<tmsize_t>(source.file_size + decoder_memory));
-    // "c": no cutting of long strips into short ones.
-    Handle tiff(TIFFClientOpenExt("", "rmc", &input, on_read, on_write, on_seek, on_close, on_size,
-                                  on_map, on_unmap, options.get()));
-    if (tiff == nullptr || input.complained) {
-        refuse_damaged(source, "a TIFF whose directory is missing or makes no sense");
-    }
-    return tiff;
-}
 
 template <typename T>
 T tag(TIFF* tiff, std::uint32_t name, T otherwise) {
@@ -114,7 +28,7 @@ class TiffReader {
     explicit TiffReader(const Source& source)
         : source_(source),
           input_{source.descriptor, source.file_size},
-          tiff_(open(source, input_)) {}
+          tiff_(open_tiff(source, input_)) {}
 
     Stored read() {
         check_kind();
@@ -147,8 +61,8 @@ class TiffReader {
     [[noreturn]] void give_up(const std::string& where);
 
     const Source& source_;
-    Input input_;
-    Handle tiff_;
+    TiffInput input_;
+    TiffHandle tiff_;
     TiffLayout layout_;
     Stored stored_;
 };
@@ -366,7 +280,7 @@ void TiffReader::read_tiles(TiffPixels& pixels) {
     if (size == 0 || TIFFTileRowSize64(tiff_.get()) != row_size || size != row_size * tile_height) {
         give_up("in its directory");
     }
-    if (size > source_.file_size + decoder_memory) {
+    if (size > source_.file_size + tiff_decoder_memory) {
         refuse_damaged(source_, "a TIFF with tiles far larger than itself");
     }
     Samples<std::uint8_t> tile(size);

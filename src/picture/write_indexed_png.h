@@ -14,8 +14,8 @@ namespace tincture {
 struct IndexedPicture {
     std::uint32_t width;
     std::uint32_t height;
-    const std::uint8_t* labels;                     // width * height indices into `palette`
-    std::span<const Rgb8> palette;                  // 1 to 256 colours, the transparent one included
+    const std::uint8_t* labels;     // width * height indices into `palette`
+    std::span<const Rgb8> palette;  // 1 to 256 colours, the transparent one included
     std::optional<std::uint8_t> transparent_index;  // this index is fully transparent
     std::span<const std::uint8_t> icc;              // written as iCCP; empty: an sRGB chunk instead
     std::optional<Resolution> resolution;           // written as pHYs

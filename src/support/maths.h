@@ -7,6 +7,6 @@ namespace tincture {
 // Natural logarithm of a positive finite x, within natural_log_error relative to the larger of 1
 // and the result.
 [[nodiscard]] double natural_log(double x);
-inline constexpr double natural_log_error = 1e-14;
+inline constexpr double natural_log_error = 1e-15;
 
 }  // namespace tincture

@@ -223,6 +223,12 @@ def test_threads_do_not_change_a_byte_of_a_picture_large_enough_to_be_cut_up(tmp
         assert contents(one) == contents(two)
 
 
+def test_other_variants_of_the_c_library_s_functions_give_the_same_bytes(case, tmp_path):
+    """glibc's pow, exp, sin and atan2 differ in their last bits without fused multiply-add."""
+    env = environment(GLIBC_TUNABLES="glibc.cpu.hwcaps=-AVX2,-FMA,-FMA4,-AVX512F,-AVX")
+    assert contents(reduce(case.picture, cwd=tmp_path, env=env)) == contents(case.folder)
+
+
 @pytest.mark.skipif(sanitized(), reason="the emulator has no room for AddressSanitizer's memory")
 @pytest.mark.skipif(not shutil.which("qemu-x86_64"), reason="needs the Debian package qemu-user")
 @pytest.mark.parametrize("name", ["poster", "noisy"])

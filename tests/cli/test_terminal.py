@@ -4,6 +4,7 @@ import os
 import re
 import signal
 import time
+import unicodedata
 
 import pytest
 
@@ -50,10 +51,23 @@ def test_a_terminal_gets_colours_and_no_line_is_broken(place, columns):
         r, g, b = (int(colour["hex"][i : i + 2], 16) for i in (1, 3, 5))
         assert f"\x1b[48;2;{r};{g};{b}m" in text
     assert bool(BLOCKS.search(text)) == (columns > 40), "bars where there is room"
+    assert "◂ proposed" in text if columns > 40 else "▴ proposed" in text, "beside the bar where there is room"
     lines = ESCAPE.sub("", text).split("\n")
     assert max(map(len, lines)) <= columns
     assert text.count("\x1b[0m") >= text.count("\x1b[48;")
     assert not any(line != line.rstrip() for line in lines), "nothing trails"
+
+
+def test_the_longest_bar_leaves_room_for_its_mark(place):
+    assert "█ ◂ used" in ESCAPE.sub("", summary(place, "--count", "2"))
+
+
+def test_wide_characters_take_two_columns(place):
+    folder = " ".join(["屋根の上", "крыша"] * 9)
+    text = summary(place, "--out", folder)
+    assert folder in " ".join(ESCAPE.sub("", text).split())
+    for line in ESCAPE.sub("", text).split("\n"):
+        assert sum(2 if unicodedata.east_asian_width(c) in "WF" else 1 for c in line) <= 80, line
 
 
 def test_no_color_takes_the_colours_away_and_nothing_else(place):

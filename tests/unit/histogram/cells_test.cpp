@@ -61,6 +61,8 @@ TEST(MergeIntoCells, KeepsWeightAndMoment) {
 
 // About one centre, so that no point is nearer to another than its cell is.
 TEST(MergeIntoCells, KeepsTheError) {
+    // Cells stand at their mean in single precision, so that a little of the error is lost.
+    constexpr double rounding = 5e-8;
     Random random(32);
     WeightedPoints points =
         test_support::cloud_points(random, {.n = 5000, .groups = 8, .spread = 12});
@@ -71,13 +73,13 @@ TEST(MergeIntoCells, KeepsTheError) {
             const Rows centre = {
                 {random.between(-100, 100), random.between(-100, 100), random.between(-100, 100)}};
             const double exact = test_support::plain_objective(points, centre);
-            EXPECT_NEAR(test_support::plain_objective(merged, centre), exact, 1e-9 * exact);
+            EXPECT_NEAR(test_support::plain_objective(merged, centre), exact, rounding * exact);
         }
         // Merged again it still is.
         merged = merge_into_cells(merged, 4 * edge);
         const Rows middle = {{0, 0, 0}};
         const double exact = test_support::plain_objective(points, middle);
-        EXPECT_NEAR(test_support::plain_objective(merged, middle), exact, 1e-9 * exact);
+        EXPECT_NEAR(test_support::plain_objective(merged, middle), exact, rounding * exact);
     }
 }
 

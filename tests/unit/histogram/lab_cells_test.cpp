@@ -146,7 +146,7 @@ void expect_equal(const ColourTable& one, const ColourTable& two) {
 TEST(LabCells, OrderAndThreadsHaveNoSay) {
     Random random(23);
     const ColourSpace space = ColourSpace::standard(ColourModel::rgb);
-    Picture picture = test_support::photograph_like(random, 8, {900, 700});
+    Picture picture = test_support::photograph_like(random, 8, {600, 450});
     test_support::punch_holes(picture, random);
     const Picture mixed = test_support::shuffled_pixels(picture, random);
     for (const std::size_t max_cells : {100'000U, 500U}) {

@@ -16,6 +16,7 @@ TEST(Geometry, BoxesAndSegments) {
     EXPECT_TRUE(contains(box, {10, 10, 20, 10}));
     EXPECT_FALSE(contains(box, {10, 10, 20.1, 10}));
     EXPECT_TRUE(crosses({{0, 15}, {100, 15}}, box));
+    EXPECT_TRUE(crosses({{100, 18}, {0, 12}}, box)) << "leftwards and up";
     EXPECT_TRUE(crosses({{15, 12}, {16, 13}}, box)) << "within";
     EXPECT_TRUE(crosses({{5, 18}, {15, 28}}, {10, 10, 20, 14}));
     EXPECT_FALSE(crosses({{0, 10}, {100, 10}}, box)) << "along the edge";

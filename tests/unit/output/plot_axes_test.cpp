@@ -32,7 +32,7 @@ TEST(LogAxis, NarrowAndWideRanges) {
         const auto ticks = LogAxis(values, 0.05, 100, 250).ticks();
         EXPECT_GE(ticks.size(), 2U);
         for (std::size_t i = 1; i < ticks.size(); ++i) {
-            EXPECT_LE(ticks[i].position, ticks[i - 1].position - 17.9) << largest;
+            EXPECT_LE(ticks[i].position, ticks[i - 1].position - 14.9) << largest;
         }
     }
 }

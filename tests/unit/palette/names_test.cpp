@@ -3,9 +3,9 @@
 #include <gtest/gtest.h>
 
 #include <algorithm>
+#include <cctype>
 #include <cmath>
 #include <random>
-#include <regex>
 #include <set>
 
 namespace tincture {
@@ -23,6 +23,14 @@ std::vector<Lab> random_labs(unsigned seed, std::size_t count, double spread) {
                         draw(random, -spread, spread)});
     }
     return labs;
+}
+
+bool has_letter_behind_digit(const std::string& name) {
+    const auto found =
+        std::adjacent_find(name.begin(), name.end(), [](unsigned char one, unsigned char other) {
+            return std::isdigit(one) != 0 && std::isalpha(other) != 0;
+        });
+    return found != name.end();
 }
 
 std::string name_of(const Lab& lab) {
@@ -112,13 +120,12 @@ TEST(Names, EqualColoursStillDiffer) {
 }
 
 TEST(Names, AreUniqueAndWellFormedFor256RandomColours) {
-    const std::regex digit_then_letter("[0-9][A-Za-z]");
     for (unsigned seed = 0; seed < 40; ++seed) {
         const double spread = seed % 4 == 0 ? 0.5 : seed % 4 == 1 ? 8 : 80;
         const auto names = name_colours(random_labs(seed, 256, spread));
         EXPECT_EQ(std::set<std::string>(names.begin(), names.end()).size(), 256U) << seed;
         for (const std::string& name : names) {
-            EXPECT_FALSE(std::regex_search(name, digit_then_letter)) << name;
+            EXPECT_FALSE(has_letter_behind_digit(name)) << name;
         }
     }
 }

@@ -138,13 +138,28 @@ TEST(TiffKinds, HugeSidesAreALimit) {
     EXPECT_THAT(error.what(), HasSubstr("100000 x 100000"));
 }
 
+TEST(TiffKinds, SaysWhereItWasCut) {
+    for (const char* mode : {"wl", "wb", "wl8", "wb8"}) {
+        const TiffSpec spec{.width = 40, .height = 40, .mode = mode};
+        Bytes file = encode_tiff(spec, noise(4800));  // the directory comes behind the pixels
+        file.resize(2000);
+        EXPECT_THAT(
+            error_of(file).what(),
+            HasSubstr("is cut short: a TIFF that ends after 2000 bytes, before its directory"))
+            << mode;
+    }
+}
+
 TEST(TiffKinds, SaysHowManyBytesAreMissing) {
-    const TiffSpec spec{.width = 40, .height = 40};
+    const TiffSpec spec{.width = 40, .height = 40, .mode = "wl"};
     Bytes file = encode_tiff(spec, noise(4800));
-    const std::size_t whole = file.size();
-    // The directory is at the end; move it before the pixels by cutting it off and keeping a copy.
-    file.resize(whole / 2);
-    EXPECT_THAT(error_of(file).what(), HasSubstr("a TIFF whose directory"));
+    const std::size_t entry = entry_of(file, TIFFTAG_STRIPOFFSETS);
+    ASSERT_NE(entry, 0U);
+    const std::size_t offsets = file[entry + 8] | static_cast<std::size_t>(file[entry + 9]) << 8;
+    put(file, offsets + 7 * 4, little(file.size() - 10, 4));  // the last of 8 strips of 600 bytes
+    EXPECT_THAT(error_of(file).what(),
+                HasSubstr("is cut short: a TIFF that ends after " + std::to_string(file.size()) +
+                          " of at least " + std::to_string(file.size() + 590) + " bytes"));
 }
 
 }  // namespace

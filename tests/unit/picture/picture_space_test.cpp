@@ -1,4 +1,4 @@
-#include "colour/picture_space.h"
+#include "picture/picture_space.h"
 
 #include <gtest/gtest.h>
 
