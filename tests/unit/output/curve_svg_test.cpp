@@ -78,6 +78,21 @@ TEST(CurveSvg, NamesWhatItMarks) {
     EXPECT_FALSE(shows(photograph, "evidence")) << "it cannot be told from all pixels";
 }
 
+// As where a palette is used as it was given.
+TEST(CurveSvg, WithoutAProposalNothingIsDefended) {
+    Study study = fixtures::given();
+    study.proposal = {};
+    const std::string svg = curve_svg(study);
+    const auto drawing = svg_reading::parse(svg);
+    EXPECT_TRUE(shows(drawing, "5 colours were given."));
+    EXPECT_EQ(svg.find("defended"), std::string::npos);
+    const bool band = std::any_of(drawing.begin(), drawing.end(), [](const Element& element) {
+        const auto fill = element.attributes.find("fill");
+        return fill != element.attributes.end() && fill->second == "#f0f0f0";
+    });
+    EXPECT_FALSE(band);
+}
+
 TEST(CurveSvg, CurveRunsThroughTheMeasuredPoints) {
     Study study = fixtures::photograph();
     const auto drawing = svg_reading::parse(curve_svg(study));
