@@ -6,6 +6,7 @@
 #include <cstddef>
 #include <map>
 #include <new>
+#include <optional>
 #include <string_view>
 
 namespace tincture {
@@ -77,66 +78,110 @@ class RowDeflater {
     Bytes packed_;
 };
 
-// The colours of `pixels` in the order in which they appear, and for each pixel the index of its
-// own; nothing where they are more than 256.
-std::vector<Rgb8> index_colours(const std::vector<Rgb8>& pixels, Bytes& indices) {
-    constexpr std::size_t most_colours = 256;
-    std::vector<Rgb8> palette;
-    std::map<Rgb8, std::uint8_t> index_of;
-    indices.resize(pixels.size());
-    for (std::size_t i = 0; i < pixels.size(); ++i) {
-        if (i > 0 && pixels[i] == pixels[i - 1]) {
-            indices[i] = indices[i - 1];
-            continue;
+// Finds the index of a colour, in the order in which colours appear.
+class ColourIndex {
+  public:
+    // False where the row brings more colours than an index holds.
+    bool add(std::span<const Rgb8> row, std::uint8_t* indices) {
+        constexpr std::size_t most_colours = 256;
+        for (const Rgb8& pixel : row) {
+            if (palette_.empty() || pixel != last_colour_) {
+                const auto [entry, added] =
+                    index_of_.try_emplace(pixel, static_cast<std::uint8_t>(palette_.size()));
+                if (added && palette_.size() == most_colours) return false;
+                if (added) palette_.push_back(pixel);
+                last_colour_ = pixel;
+                last_index_ = entry->second;
+            }
+            *indices++ = last_index_;
         }
-        const auto [entry, added] =
-            index_of.try_emplace(pixels[i], static_cast<std::uint8_t>(palette.size()));
-        if (added && palette.size() == most_colours) return {};
-        if (added) palette.push_back(pixels[i]);
-        indices[i] = entry->second;
+        return true;
     }
-    return palette;
+
+    [[nodiscard]] const std::vector<Rgb8>& palette() const { return palette_; }
+
+  private:
+    std::vector<Rgb8> palette_;
+    std::map<Rgb8, std::uint8_t> index_of_;
+    Rgb8 last_colour_;  // rows are mostly runs
+    std::uint8_t last_index_ = 0;
+};
+
+struct Packed {
+    std::vector<Rgb8> palette;  // empty: the rows are RGB
+    Bytes rows;
+};
+
+// Nothing where `indexed` is wanted and there are too many colours.
+std::optional<Packed> pack(int width, int height, bool indexed,
+                           const std::function<void(Band&)>& draw) {
+    static_assert(sizeof(Rgb8) == 3);
+    constexpr int band_height = 64;
+    const auto pixels = static_cast<std::size_t>(width);
+    RowDeflater rows(indexed ? pixels : 3 * pixels);
+    ColourIndex colours;
+    Bytes indices(pixels);
+    for (int top = 0; top < height; top += band_height) {
+        const int bottom = std::min(height, top + band_height);
+        Band band(width, top, bottom);
+        draw(band);
+        for (int y = top; y < bottom; ++y) {
+            const std::span<const Rgb8> row = band.row(y);
+            if (!indexed) {
+                rows.add(reinterpret_cast<const std::uint8_t*>(row.data()));
+            } else if (colours.add(row, indices.data())) {
+                rows.add(indices.data());
+            } else {
+                return std::nullopt;
+            }
+        }
+    }
+    return Packed{colours.palette(), rows.finish()};
 }
 
 }  // namespace
 
-Canvas::Canvas(std::uint32_t canvas_width, std::uint32_t canvas_height)
-    : width(canvas_width),
-      height(canvas_height),
-      pixels(std::size_t{canvas_width} * canvas_height, Rgb8{255, 255, 255}) {}
+Band::Band(int width, int top, int bottom)
+    : width_(width),
+      top_(top),
+      bottom_(bottom),
+      pixels_(static_cast<std::size_t>(width) * static_cast<std::size_t>(bottom - top),
+              Rgb8{255, 255, 255}) {}
 
-void Canvas::fill(int left, int top, int right, int bottom, Rgb8 colour) {
+std::span<const Rgb8> Band::row(int y) const {
+    const auto pixels = static_cast<std::size_t>(width_);
+    return std::span(pixels_).subspan(static_cast<std::size_t>(y - top_) * pixels, pixels);
+}
+
+void Band::fill(int left, int top, int right, int bottom, Rgb8 colour) {
     left = std::max(left, 0);
-    right = std::min(right, static_cast<int>(width));
-    for (int y = std::max(top, 0); y < std::min(bottom, static_cast<int>(height)); ++y) {
-        const auto row = pixels.begin() + static_cast<std::ptrdiff_t>(width) * y;
-        if (left < right) std::fill(row + left, row + right, colour);
+    right = std::min(right, width_);
+    if (left >= right) return;
+    for (int y = std::max(top, top_); y < std::min(bottom, bottom_); ++y) {
+        const auto row = pixels_.begin() + static_cast<std::ptrdiff_t>(width_) * (y - top_);
+        std::fill(row + left, row + right, colour);
     }
 }
 
-void Canvas::blend(int x, int y, Rgb8 colour, std::uint8_t coverage) {
-    if (x < 0 || y < 0 || x >= static_cast<int>(width) || y >= static_cast<int>(height)) return;
-    Rgb8& pixel = pixels[static_cast<std::size_t>(y) * width + static_cast<std::size_t>(x)];
+void Band::blend(int x, int y, Rgb8 colour, std::uint8_t coverage) {
+    if (x < 0 || x >= width_ || y < top_ || y >= bottom_) return;
+    Rgb8& pixel = pixels_[static_cast<std::size_t>(y - top_) * static_cast<std::size_t>(width_) +
+                          static_cast<std::size_t>(x)];
     const auto mix = [coverage](std::uint8_t under, std::uint8_t over) {
         return static_cast<std::uint8_t>((under * (255 - coverage) + over * coverage + 127) / 255);
     };
     pixel = {mix(pixel.r, colour.r), mix(pixel.g, colour.g), mix(pixel.b, colour.b)};
 }
 
-Bytes encode_png(const Canvas& canvas, std::uint32_t pixels_per_metre) {
-    static_assert(sizeof(Rgb8) == 3);
-    Bytes indices;
-    const std::vector<Rgb8> palette = index_colours(canvas.pixels, indices);
-    const bool indexed = !palette.empty();
-    const std::size_t row_bytes = std::size_t{canvas.width} * (indexed ? 1 : 3);
-    const auto* samples =
-        indexed ? indices.data() : reinterpret_cast<const std::uint8_t*>(canvas.pixels.data());
-    RowDeflater rows(row_bytes);
-    for (std::size_t y = 0; y < canvas.height; ++y) rows.add(samples + y * row_bytes);
+Bytes draw_png(int width, int height, std::uint32_t pixels_per_metre,
+               const std::function<void(Band&)>& draw) {
+    std::optional<Packed> packed = pack(width, height, true, draw);
+    const bool indexed = packed.has_value();
+    if (!indexed) packed = pack(width, height, false, draw);
 
     Bytes header;
-    append_number(header, canvas.width);
-    append_number(header, canvas.height);
+    append_number(header, static_cast<std::uint32_t>(width));
+    append_number(header, static_cast<std::uint32_t>(height));
     const std::uint8_t colour_type = indexed ? 3 : 2;
     header.insert(header.end(), {8, colour_type, 0, 0, 0});  // 8 bits; not interlaced
     Bytes resolution;
@@ -150,12 +195,12 @@ Bytes encode_png(const Canvas& canvas, std::uint32_t pixels_per_metre) {
     append_chunk(png, "pHYs", resolution);
     if (indexed) {
         Bytes entries;
-        for (const Rgb8& colour : palette) {
+        for (const Rgb8& colour : packed->palette) {
             entries.insert(entries.end(), {colour.r, colour.g, colour.b});
         }
         append_chunk(png, "PLTE", entries);
     }
-    append_chunk(png, "IDAT", rows.finish());
+    append_chunk(png, "IDAT", packed->rows);
     append_chunk(png, "IEND", {});
     return png;
 }

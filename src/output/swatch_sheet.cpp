@@ -185,7 +185,7 @@ int pixel(double length) {
     return static_cast<int>(std::lround(length * png_scale));
 }
 
-void paint(Canvas& canvas, const SheetField& shape) {
+void paint(Band& band, const SheetField& shape) {
     const Box& box = shape.box;
     const int line = pixel(1);
     const int left = pixel(box.x);
@@ -193,28 +193,31 @@ void paint(Canvas& canvas, const SheetField& shape) {
     const int right = pixel(box.right());
     const int bottom = pixel(box.bottom());
     if (shape.outlined) {
-        canvas.fill(left, top, right, bottom, hairline);
-        canvas.fill(left + line, top + line, right - line, bottom - line, shape.fill);
+        band.fill(left, top, right, bottom, hairline);
+        band.fill(left + line, top + line, right - line, bottom - line, shape.fill);
     } else {
-        canvas.fill(left, top, right, bottom, shape.fill);
+        band.fill(left, top, right, bottom, shape.fill);
     }
 }
 
-void paint(Canvas& canvas, TextPainter& painter, const SheetText& shape) {
+void paint(Band& band, TextPainter& painter, const SheetText& shape) {
+    const int baseline = pixel(shape.baseline.y);
+    const int reach = pixel(1.5 * shape.size);  // no glyph is taller or lower
+    if (!band.shows(baseline - reach, baseline + reach)) return;
     double x = shape.baseline.x;
     const double width = text_width(shape.words, shape.size, shape.weight);
     if (shape.anchor == Anchor::end) x -= width;
     if (shape.anchor == Anchor::middle) x -= width / 2;
     for (const PlacedGlyph& glyph : painter.paint(shape.words, shape.size * png_scale, shape.weight,
-                                                  x * png_scale, shape.baseline.y * png_scale)) {
+                                                  x * png_scale, baseline)) {
         const GlyphImage& image = *glyph.image;
         for (int row = 0; row < image.height; ++row) {
             for (int column = 0; column < image.width; ++column) {
                 const auto at = static_cast<std::size_t>(row) * image.width + column;
                 // 16 steps suffice for the eye and leave room for the swatches in a palette of 256.
                 const int step = (image.coverage[at] + 8) / 17;
-                canvas.blend(glyph.x + column, glyph.y + row, shape.colour,
-                             static_cast<std::uint8_t>(17 * step));
+                band.blend(glyph.x + column, glyph.y + row, shape.colour,
+                           static_cast<std::uint8_t>(17 * step));
             }
         }
     }
@@ -250,17 +253,17 @@ std::string swatches_svg(const Study& study) {
 
 std::vector<std::uint8_t> swatches_png(const Study& study) {
     const SwatchSheet sheet = lay_out_swatches(study);
-    Canvas canvas(static_cast<std::uint32_t>(pixel(sheet.width)),
-                  static_cast<std::uint32_t>(pixel(sheet.height)));
     TextPainter painter;
-    for (const auto& shape : sheet.shapes) {
-        if (const auto* field = std::get_if<SheetField>(&shape)) {
-            paint(canvas, *field);
-        } else {
-            paint(canvas, painter, std::get<SheetText>(shape));
+    const auto draw = [&](Band& band) {
+        for (const auto& shape : sheet.shapes) {
+            if (const auto* field = std::get_if<SheetField>(&shape)) {
+                paint(band, *field);
+            } else {
+                paint(band, painter, std::get<SheetText>(shape));
+            }
         }
-    }
-    return encode_png(canvas, pixels_per_metre);
+    };
+    return draw_png(pixel(sheet.width), pixel(sheet.height), pixels_per_metre, draw);
 }
 
 }  // namespace tincture

@@ -10,8 +10,8 @@ namespace tincture {
 // How many threads later calls may use together; 0 means one per processor.
 void set_thread_count(int count);
 
-// Calls body(i) once for each i in [0, blocks), in no order, possibly at the same time; returns when
-// all have ended. An exception of a body is rethrown here (one of them, if several threw).
+// Calls body(i) once for each i in [0, blocks), in no order, possibly at the same time; returns
+// when all have ended. An exception of a body is rethrown here (one of them, if several threw).
 void parallel_for(std::size_t blocks, const std::function<void(std::size_t)>& body);
 
 }  // namespace tincture

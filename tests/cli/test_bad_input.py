@@ -3,6 +3,7 @@ import os
 import resource
 import shutil
 import time
+import xml.etree.ElementTree
 
 import numpy as np
 import pytest
@@ -264,6 +265,7 @@ def check_name_in_outputs(folder, name):
     assert study["picture"]["file"].replace("\ufffd\ufffd", "\ufffd") == name.replace("\ufffd\ufffd", "\ufffd")
     for drawing in ("swatches.svg", "curve.svg"):
         text = (folder / drawing).read_text(encoding="utf-8")
+        xml.etree.ElementTree.fromstring(text)
         assert "<img" not in text and "&amp;lt;" not in text.replace("&amp;amp;lt;", "")
 
 

@@ -4,8 +4,8 @@
 #include "choose/measure.h"
 #include "choose/proposal.h"
 #include "cluster/sweep.h"
-#include "picture/picture_space.h"
 #include "label/label_map.h"
+#include "picture/picture_space.h"
 #include "tests/support/pictures.h"
 #include "tests/support/profiles.h"
 

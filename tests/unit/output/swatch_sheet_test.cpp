@@ -36,16 +36,24 @@ Decoded decode(const std::vector<std::uint8_t>& bytes) {
     return decoded;
 }
 
+// 200 rows: more than one band.
 std::vector<std::uint8_t> noise_png(std::uint32_t colours) {
-    Canvas canvas(97, 31);
-    for (std::size_t i = 0; i < canvas.pixels.size(); ++i) {
-        const auto value = static_cast<std::uint32_t>(i * 2654435761U >> 7U) % colours;
-        canvas.pixels[i] = {static_cast<std::uint8_t>(value),
-                            static_cast<std::uint8_t>(value >> 8U),
-                            static_cast<std::uint8_t>(value * 5)};
+    constexpr int width = 97;
+    constexpr int height = 200;
+    std::vector<Rgb8> pixels;
+    for (std::uint32_t i = 0; i < width * height; ++i) {
+        const std::uint32_t value = (i * 2654435761U >> 7U) % colours;
+        pixels.push_back({static_cast<std::uint8_t>(value), static_cast<std::uint8_t>(value >> 8U),
+                          static_cast<std::uint8_t>(value * 5)});
     }
-    const auto png = encode_png(canvas, 7559);
-    EXPECT_EQ(decode(png).pixels, canvas.pixels);
+    const auto png = draw_png(width, height, 7559, [&](Band& band) {
+        for (int y = 0; y < height; ++y) {
+            for (int x = 0; x < width; ++x) {
+                band.blend(x, y, pixels[static_cast<std::size_t>(y * width + x)], 255);
+            }
+        }
+    });
+    EXPECT_EQ(decode(png).pixels, pixels);
     return png;
 }
 
@@ -58,21 +66,32 @@ TEST(SmallPng, ComesBackExactly) {
 }
 
 TEST(SmallPng, SaysThatItIsSrgb) {
-    const auto png = encode_png(Canvas(3, 2), 7559);
+    const auto png = draw_png(3, 2, 7559, [](Band&) {});
     const std::array<std::uint8_t, 5> chunk = {'s', 'R', 'G', 'B', 0};
     EXPECT_NE(std::search(png.begin(), png.end(), chunk.begin(), chunk.end()), png.end());
 }
 
-TEST(SmallPng, DrawingStaysOnTheCanvas) {
-    Canvas canvas(4, 3);
-    canvas.fill(-5, -5, 2, 100, {10, 20, 30});
-    canvas.fill(3, 0, 2, 3, {0, 0, 0});
-    canvas.blend(-1, 0, {0, 0, 0}, 255);
-    canvas.blend(4, 2, {0, 0, 0}, 255);
-    canvas.blend(3, 2, {55, 155, 255}, 51);
-    EXPECT_EQ(canvas.pixels[1], (Rgb8{10, 20, 30}));
-    EXPECT_EQ(canvas.pixels[2], (Rgb8{255, 255, 255}));
-    EXPECT_EQ(canvas.pixels[11], (Rgb8{215, 235, 255}));
+TEST(SmallPng, DrawingStaysInTheBand) {
+    Band band(4, 10, 13);
+    band.fill(-5, -5, 2, 100, {10, 20, 30});
+    band.fill(3, 10, 2, 13, {0, 0, 0});
+    band.blend(-1, 10, {0, 0, 0}, 255);
+    band.blend(4, 12, {0, 0, 0}, 255);
+    band.blend(1, 9, {0, 0, 0}, 255);
+    band.blend(1, 13, {0, 0, 0}, 255);
+    band.blend(3, 12, {55, 155, 255}, 51);
+    const Rgb8 filled{10, 20, 30};
+    const Rgb8 white{255, 255, 255};
+    for (const int y : {10, 11}) {
+        const auto row = band.row(y);
+        EXPECT_EQ(std::vector<Rgb8>(row.begin(), row.end()),
+                  (std::vector<Rgb8>{filled, filled, white, white}));
+    }
+    EXPECT_EQ(band.row(12)[3], (Rgb8{215, 235, 255}));
+    EXPECT_TRUE(band.shows(0, 11));
+    EXPECT_TRUE(band.shows(12, 20));
+    EXPECT_FALSE(band.shows(0, 10));
+    EXPECT_FALSE(band.shows(13, 20));
 }
 
 void expect_text_is_free(const std::string& name, const Study& study) {

@@ -1,10 +1,10 @@
 #include "support/parallel.h"
 
+#include <gtest/gtest.h>
+
 #include <atomic>
 #include <stdexcept>
 #include <vector>
-
-#include <gtest/gtest.h>
 
 namespace tincture {
 namespace {
@@ -20,9 +20,10 @@ TEST(Parallel, CallsEachBlockOnce) {
 }
 
 TEST(Parallel, HandsAnExceptionOn) {
-    EXPECT_THROW(parallel_for(100, [](std::size_t i) {
-                     if (i == 57) throw std::runtime_error("57");
-                 }),
+    EXPECT_THROW(parallel_for(100,
+                              [](std::size_t i) {
+                                  if (i == 57) throw std::runtime_error("57");
+                              }),
                  std::runtime_error);
 }
 
