@@ -15,11 +15,11 @@ namespace {
 constexpr LloydLimits settled = {30, 5e-4};
 constexpr LloydLimits glance = {4, 1e-3};
 constexpr int exchange_rounds = 4;
-constexpr std::size_t exchange_choices = 4;  // centres and splits that are paired
-constexpr std::size_t exchange_ways = 16;    // pairs that are glanced at
-constexpr std::size_t exchange_settled = 2;  // pairs that may settle
-constexpr double exchange_estimate = -0.3;   // of the objective: a pair that starts worse is not
-constexpr double exchange_glance = 1.01;     // times the objective: after a glance likewise
+constexpr std::size_t exchange_choices = 6;  // centres and splits that are paired
+constexpr std::size_t exchange_ways = 36;    // pairs that are glanced at
+constexpr std::size_t exchange_settled = 4;  // pairs that may settle
+constexpr double exchange_estimate = -0.6;   // of the objective: a pair that starts worse is not
+constexpr double exchange_glance = 1.02;     // times the objective: after a glance likewise
 constexpr int exchange_up_to = 40;           // colours: with more, none matters much
 
 void put_row(Centres& centres, int k, const std::vector<float>& row) {

@@ -234,6 +234,13 @@ TEST(Png, WrongChecksumIsDamage) {
     EXPECT_THAT(error_of(file).what(), HasSubstr("is damaged: a PNG"));
 }
 
+// All pixels are there, but what turns the picture may have been behind them.
+TEST(Png, WithoutItsEndIsCutShort) {
+    Bytes file = encode_png({.width = 7, .height = 5}, noise(7 * 5 * 3));
+    file.resize(file.size() - 12);
+    EXPECT_THAT(error_of(file).what(), HasSubstr("behind its pixels"));
+}
+
 TEST(Png, SaysWhereItWasCut) {
     Bytes file = encode_png({.width = 64, .height = 64}, noise(64 * 64 * 3));
     file.resize(file.size() / 2);

@@ -2,6 +2,8 @@
 #include <gmock/gmock.h>
 #include <gtest/gtest.h>
 
+#include <algorithm>
+
 #include "made_files.h"
 
 namespace tincture {
@@ -136,6 +138,21 @@ TEST(TiffKinds, HugeSidesAreALimit) {
     const Error error = error_of(file);
     EXPECT_EQ(error.kind(), ErrorKind::limit);
     EXPECT_THAT(error.what(), HasSubstr("100000 x 100000"));
+}
+
+// libtiff warns and makes the rest of the strip up.
+TEST(TiffKinds, WarningsAboutPixelsAreDamage) {
+    TiffSpec spec{.width = 48, .height = 32};
+    spec.compression = COMPRESSION_JPEG;
+    spec.tags = [](TIFF* tiff) { TIFFSetField(tiff, TIFFTAG_ROWSPERSTRIP, 32); };
+    Bytes file = encode_tiff(spec, smooth(48, 32, 3));
+    (void)read_bytes(file);
+    const Bytes scan{0xFF, 0xDA};
+    const auto start = std::search(file.begin(), file.end(), scan.begin(), scan.end());
+    ASSERT_NE(start, file.end());
+    start[40] = 0xFF;  // the end of the picture, in the middle of its first rows
+    start[41] = 0xD9;
+    EXPECT_THAT(error_of(file).what(), HasSubstr("is damaged: a TIFF with wrong data at row"));
 }
 
 TEST(TiffKinds, SaysWhereItWasCut) {
