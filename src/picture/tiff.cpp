@@ -190,11 +190,16 @@ void TiffReader::read_extra_samples() {
         layout_.alpha_index = colours + i;
         layout_.premultiplied = kinds[i] == EXTRASAMPLE_ASSOCALPHA;
     }
-    // Other extra samples are masks of somebody's; beside CMYK they may be inks that would be lost.
+    // One other extra sample is a mask of somebody's; beside CMYK it may be an ink that would be
+    // lost. Several are bands of a scene.
     const int others = layout_.samples_per_pixel - colours - (layout_.alpha_index >= 0 ? 1 : 0);
     if (layout_.model == ColourModel::cmyk && others > 0) {
         refuse(source_, "is a TIFF with " + std::to_string(others) +
                             " channels besides CMYK: save it without spot channels");
+    }
+    if (others > 1) {
+        refuse(source_, "has " + std::to_string(layout_.samples_per_pixel) +
+                            " bands, as a scene has: export three of them as an RGB picture");
     }
 }
 

@@ -46,6 +46,12 @@ def test_every_format_is_read_when_it_is_whole(tmp_path):
     assert [c["hex"] for c in study_of(tmp_path / "avif")["palettes"][1]["colours"]] == ["#145aa0", "#c83c28"]
 
 
+def test_scene_of_several_bands(refused):
+    """Its first band is no grey picture."""
+    scene = os.path.join(os.path.dirname(__file__), "../../sample-images/river-delta-scene.tif")
+    refused(scene, says=("has 4 bands", "RGB"))
+
+
 def test_missing_file(refused):
     refused("none.png", says=("none.png: does not exist",))
 
