@@ -1,8 +1,7 @@
 // Weighted k-means from given centres (Lloyd 1982, IEEE Trans. Information Theory 28:129-137).
 #pragma once
 
-#include <vector>
-
+#include "cluster/partition.h"
 #include "histogram/weighted_points.h"
 
 namespace tincture {
@@ -19,16 +18,12 @@ struct LloydLimits {
 // any number of threads.
 double lloyd(const WeightedPoints& points, Centres& centres, int fixed, const LloydLimits& limits);
 
+// The same from a partition that is nearly that of the centres, which spares most of the first
+// pass; it is left as that of the centres that are returned.
+double lloyd(const WeightedPoints& points, Centres& centres, int fixed, const LloydLimits& limits,
+             Partition& partition);
+
 // The objective of some centres as they are.
 [[nodiscard]] double objective(const WeightedPoints& points, const Centres& centres);
-
-// What one pass over the points finds for each cluster.
-struct ClusterSums {
-    std::vector<double> weight;   // count
-    std::vector<double> moment;   // count * dims: sum of weight * coordinate
-    std::vector<double> scatter;  // count: sum of weight * squared distance to the centre
-    double objective = 0;         // of the points: inner scatter not included
-};
-[[nodiscard]] ClusterSums sum_clusters(const WeightedPoints& points, const Centres& centres);
 
 }  // namespace tincture

@@ -1,5 +1,8 @@
 #include "cluster/nearest.h"
 
+#include <algorithm>
+#include <array>
+
 #undef HWY_TARGET_INCLUDE
 #define HWY_TARGET_INCLUDE "cluster/nearest.cpp"
 #include <hwy/foreach_target.h>
@@ -15,20 +18,31 @@ using DI = hn::RebindToSigned<D>;
 using V = hn::Vec<D>;
 using VI = hn::Vec<DI>;
 
+constexpr float far_away = 3.0e38F;
+
+template <bool two>
 struct Best {
     V distance;
+    V second;
     VI label;
+
+    HWY_INLINE void keep_nearer(V other, int k) {
+        if constexpr (two) second = hn::Min(second, hn::Max(distance, other));
+        const auto nearer = hn::Lt(other, distance);
+        distance = hn::Min(other, distance);
+        label = hn::IfThenElse(hn::RebindMask(DI(), nearer), hn::Set(DI(), k), label);
+    }
 };
 
-HWY_INLINE void keep_nearer(Best& best, V distance, int k) {
-    const auto nearer = hn::Lt(distance, best.distance);
-    best.distance = hn::Min(distance, best.distance);
-    best.label = hn::IfThenElse(hn::RebindMask(DI(), nearer), hn::Set(DI(), k), best.label);
+template <bool two>
+HWY_INLINE Best<two> none_yet() {
+    return {hn::Set(D(), far_away), hn::Set(D(), far_away), hn::Zero(DI())};
 }
 
 // Two vectors of points at once in three dimensions: the centre is loaded once for both.
+template <bool two>
 HWY_INLINE void nearest_3d(const float* const* plane, std::size_t i, const Centres& centres,
-                           Best& one, Best& two) {
+                           Best<two>& first_best, Best<two>& second_best) {
     const D d;
     const std::size_t lanes = hn::Lanes(d);
     const V x1 = hn::LoadU(d, plane[0] + i);
@@ -48,15 +62,16 @@ HWY_INLINE void nearest_3d(const float* const* plane, std::size_t i, const Centr
         const V dy2 = hn::Sub(y2, cy);
         const V dz1 = hn::Sub(z1, cz);
         const V dz2 = hn::Sub(z2, cz);
-        keep_nearer(one, hn::Add(hn::Add(hn::Mul(dx1, dx1), hn::Mul(dy1, dy1)), hn::Mul(dz1, dz1)),
-                    k);
-        keep_nearer(two, hn::Add(hn::Add(hn::Mul(dx2, dx2), hn::Mul(dy2, dy2)), hn::Mul(dz2, dz2)),
-                    k);
+        first_best.keep_nearer(
+            hn::Add(hn::Add(hn::Mul(dx1, dx1), hn::Mul(dy1, dy1)), hn::Mul(dz1, dz1)), k);
+        second_best.keep_nearer(
+            hn::Add(hn::Add(hn::Mul(dx2, dx2), hn::Mul(dy2, dy2)), hn::Mul(dz2, dz2)), k);
     }
 }
 
-HWY_INLINE Best nearest_any(const PointPlanes& points, std::size_t i, const Centres& centres,
-                            Best best) {
+template <bool two>
+HWY_INLINE void nearest_any(const PointPlanes& points, std::size_t i, const Centres& centres,
+                            Best<two>& best) {
     const D d;
     for (int k = 0; k < centres.count; ++k) {
         const float* centre = centres.row(k);
@@ -65,22 +80,30 @@ HWY_INLINE Best nearest_any(const PointPlanes& points, std::size_t i, const Cent
             const V delta = hn::Sub(hn::LoadU(d, points.plane[dim] + i), hn::Set(d, centre[dim]));
             sum = hn::Add(sum, hn::Mul(delta, delta));
         }
-        keep_nearer(best, sum, k);
+        best.keep_nearer(sum, k);
     }
-    return best;
 }
 
-HWY_INLINE void store(const Best& best, std::size_t i, std::uint16_t* label, float* distance) {
+// Where results go; `second` is null unless two are wanted.
+struct Out {
+    std::uint16_t* label;
+    float* distance;
+    float* second;
+};
+
+template <bool two>
+HWY_INLINE void store(const Best<two>& best, std::size_t i, const Out& out) {
     const hn::Rebind<std::uint16_t, DI> d16;
-    hn::StoreU(best.distance, D(), distance + i);
-    hn::StoreU(hn::DemoteTo(d16, best.label), d16, label + i);
+    hn::StoreU(best.distance, D(), out.distance + i);
+    if constexpr (two) hn::StoreU(best.second, D(), out.second + i);
+    hn::StoreU(hn::DemoteTo(d16, best.label), d16, out.label + i);
 }
 
-// The few points behind the last whole vector; the same sums in the same order.
-void nearest_tail(const PointPlanes& points, std::size_t i, const Centres& centres,
-                  std::uint16_t* label, float* distance) {
-    for (; i < points.n; ++i) {
-        float best = 3.0e38F;
+// Fewer points than vectors take; the same sums in the same order.
+void nearest_few(const PointPlanes& points, const Centres& centres, const Out& out) {
+    for (std::size_t i = 0; i < points.n; ++i) {
+        float best = far_away;
+        float second = far_away;
         int best_k = 0;
         for (int k = 0; k < centres.count; ++k) {
             float sum = 0;
@@ -88,36 +111,46 @@ void nearest_tail(const PointPlanes& points, std::size_t i, const Centres& centr
                 const float delta = points.plane[dim][i] - centres.row(k)[dim];
                 sum += delta * delta;
             }
+            second = std::min(second, std::max(best, sum));
             if (sum < best) {
                 best = sum;
                 best_k = k;
             }
         }
-        distance[i] = best;
-        label[i] = static_cast<std::uint16_t>(best_k);
+        out.distance[i] = best;
+        if (out.second != nullptr) out.second[i] = second;
+        out.label[i] = static_cast<std::uint16_t>(best_k);
+    }
+}
+
+template <bool two>
+void find_nearest(const PointPlanes& points, const Centres& centres, const Out& out) {
+    const std::size_t lanes = hn::Lanes(D());
+    const std::size_t step = points.dims == 3 ? 2 * lanes : lanes;
+    if (points.n < step) return nearest_few(points, centres, out);
+    for (std::size_t start = 0; start < points.n; start += step) {
+        // The last step goes back over points that are done, to end where they end.
+        const std::size_t i = std::min(start, points.n - step);
+        Best<two> best = none_yet<two>();
+        if (points.dims == 3) {
+            Best<two> next = none_yet<two>();
+            nearest_3d(points.plane, i, centres, best, next);
+            store(next, i + lanes, out);
+        } else {
+            nearest_any(points, i, centres, best);
+        }
+        store(best, i, out);
     }
 }
 
 void NearestCentres(const PointPlanes& points, const Centres& centres, std::uint16_t* label,
                     float* distance) {
-    const D d;
-    const std::size_t lanes = hn::Lanes(d);
-    const Best none = {hn::Set(d, 3.0e38F), hn::Zero(DI())};
-    std::size_t i = 0;
-    if (points.dims == 3) {
-        for (; i + 2 * lanes <= points.n; i += 2 * lanes) {
-            Best one = none;
-            Best two = none;
-            nearest_3d(points.plane, i, centres, one, two);
-            store(one, i, label, distance);
-            store(two, i + lanes, label, distance);
-        }
-    } else {
-        for (; i + lanes <= points.n; i += lanes) {
-            store(nearest_any(points, i, centres, none), i, label, distance);
-        }
-    }
-    nearest_tail(points, i, centres, label, distance);
+    find_nearest<false>(points, centres, {label, distance, nullptr});
+}
+
+void NearestTwoCentres(const PointPlanes& points, const Centres& centres, std::uint16_t* label,
+                       float* distance, float* second) {
+    find_nearest<true>(points, centres, {label, distance, second});
 }
 
 }  // namespace HWY_NAMESPACE
@@ -127,10 +160,27 @@ HWY_AFTER_NAMESPACE();
 #if HWY_ONCE
 namespace tincture {
 HWY_EXPORT(NearestCentres);
+HWY_EXPORT(NearestTwoCentres);
 
 void nearest_centres(const PointPlanes& points, const Centres& centres, std::uint16_t* label,
                      float* squared_distance) {
     HWY_DYNAMIC_DISPATCH(NearestCentres)(points, centres, label, squared_distance);
 }
+
+void nearest_two_centres(const PointPlanes& points, const Centres& centres, std::uint16_t* label,
+                         float* squared_distance, float* second_squared_distance) {
+    HWY_DYNAMIC_DISPATCH(NearestTwoCentres)
+    (points, centres, label, squared_distance, second_squared_distance);
+}
+
+void nearest_centres(const WeightedPoints& points, std::size_t start, std::size_t size,
+                     const Centres& centres, std::uint16_t* label, float* squared_distance) {
+    std::array<const float*, max_dims> plane{};
+    for (int d = 0; d < points.dims; ++d) {
+        plane[static_cast<std::size_t>(d)] = points.plane(d) + start;
+    }
+    nearest_centres({plane.data(), points.dims, size}, centres, label, squared_distance);
+}
+
 }  // namespace tincture
 #endif

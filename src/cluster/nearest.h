@@ -21,4 +21,12 @@ struct PointPlanes {
 void nearest_centres(const PointPlanes& points, const Centres& centres, std::uint16_t* label,
                      float* squared_distance);
 
+// The same, and the squared distance to the second nearest (3.0e38 where there is one centre).
+void nearest_two_centres(const PointPlanes& points, const Centres& centres, std::uint16_t* label,
+                         float* squared_distance, float* second_squared_distance);
+
+// The same as the first for the points [start, start + size).
+void nearest_centres(const WeightedPoints& points, std::size_t start, std::size_t size,
+                     const Centres& centres, std::uint16_t* label, float* squared_distance);
+
 }  // namespace tincture

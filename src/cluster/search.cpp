@@ -1,10 +1,10 @@
 #include "cluster/search.h"
 
 #include <algorithm>
-#include <numeric>
+#include <cmath>
 
 #include "cluster/kmeans.h"
-#include "cluster/split.h"
+#include "cluster/moves.h"
 #include "support/parallel.h"
 
 namespace tincture {
@@ -13,232 +13,129 @@ namespace {
 // All figures here were found by trial on photograph-like pictures, against the best of ten random
 // starts.
 constexpr LloydLimits settled = {30, 5e-4};
-constexpr LloydLimits glance = {4, 1e-3};
 constexpr int exchange_rounds = 4;
-constexpr std::size_t exchange_choices = 6;  // centres and splits that are paired
-constexpr std::size_t exchange_ways = 36;    // pairs that are glanced at
-constexpr std::size_t exchange_settled = 4;  // pairs that may settle
-constexpr double exchange_estimate = -0.6;   // of the objective: a pair that starts worse is not
-constexpr double exchange_glance = 1.02;     // times the objective: after a glance likewise
-constexpr int exchange_up_to = 40;           // colours: with more, none matters much
+constexpr std::size_t exchange_trials = 6;  // pairs of moves that settle
+constexpr double exchange_estimate = 0.02;  // of the objective: pairs that look worse do not
+constexpr int exchange_up_to = 40;          // colours: with more, none matters much
+constexpr double worth_a_look = 1.005;      // times the objective: where exchanges may yet help
+constexpr double the_same = 1e-5;           // of the objective
 
-void put_row(Centres& centres, int k, const std::vector<float>& row) {
-    std::copy(row.begin(), row.end(), centres.row(k));
-}
-
-void append_row(Centres& centres, const float* row) {
-    centres.x.insert(centres.x.end(), row, row + centres.dims);
-    ++centres.count;
-}
-
-struct BestSplit {
-    int cluster = -1;
-    Split split;
+// The best solution of a count so far, and where it leads to.
+struct Place {
+    Solution solution;
+    Moves moves;
 };
 
-// The points of a kept centre may all lie in one place beside it: that place is worth a centre.
-Split split_from_kept(const WeightedPoints& points, const Members& members, std::size_t cluster) {
-    Split split;
-    split.gain = members.scatter[cluster];
-    const std::size_t i = members.index[members.start[cluster]];
-    for (int d = 0; d < points.dims; ++d) split.low.push_back(points.plane(d)[i]);
-    split.high = split.low;
-    return split;
-}
-
-// The clusters whose split gains most, at most `wanted`, best first.
-std::vector<BestSplit> best_splits(const WeightedPoints& points, const Centres& centres, int kept,
-                                   const Members& members, std::size_t wanted) {
-    std::vector<BestSplit> best;
-    for (int k = 0; k < centres.count; ++k) {
-        const auto at = static_cast<std::size_t>(k);
-        // A cluster cannot gain more than its scatter.
-        if (best.size() == wanted && members.scatter[at] <= best.back().split.gain) continue;
-        Split split = split_cluster(points, members.index.data() + members.start[at],
-                                    members.start[at + 1] - members.start[at]);
-        if (split.gain <= 0 && k < kept && members.scatter[at] > 0) {
-            split = split_from_kept(points, members, at);
-        }
-        if (split.gain <= 0) continue;
-        const auto place = std::find_if(best.begin(), best.end(), [&](const BestSplit& other) {
-            return split.gain > other.split.gain;
-        });
-        best.insert(place, BestSplit{k, std::move(split)});
-        if (best.size() > wanted) best.pop_back();
-    }
-    return best;
-}
-
-// Puts the halves of a split in place of its cluster: one takes the cluster's row, the other goes
-// to `spare`, or to a new row where that is negative. A kept centre stays; then only the half that
-// lies further from it is used.
-void apply_split(Centres& centres, const BestSplit& best, int kept, int spare) {
-    const std::vector<float>* second = &best.split.high;
-    if (best.cluster < kept) {
-        const auto squared_to_kept = [&](const std::vector<float>& half) {
-            float sum = 0;
-            for (std::size_t d = 0; d < half.size(); ++d) {
-                const float delta = half[d] - centres.row(best.cluster)[d];
-                sum += delta * delta;
-            }
-            return sum;
-        };
-        if (squared_to_kept(best.split.low) > squared_to_kept(*second)) second = &best.split.low;
-    } else {
-        put_row(centres, best.cluster, best.split.low);
-    }
-    if (spare >= 0) {
-        put_row(centres, spare, *second);
-    } else {
-        append_row(centres, second->data());
-    }
-}
-
-// The free centres whose points would suffer least without them, at most `wanted`, least first.
-std::vector<int> least_missed(const Members& members, int kept, std::size_t wanted) {
-    std::vector<int> order(members.removal_cost.size() - static_cast<std::size_t>(kept));
-    std::iota(order.begin(), order.end(), kept);
-    std::stable_sort(order.begin(), order.end(), [&](int one, int two) {
-        return members.removal_cost[static_cast<std::size_t>(one)] <
-               members.removal_cost[static_cast<std::size_t>(two)];
-    });
-    if (order.size() > wanted) order.resize(wanted);
-    return order;
-}
-
-// Centres of one count and their objective on the points of the search.
-struct Candidate {
-    Centres centres;
-    double objective = 0;
-};
-
+// A centre that goes and a split, which together keep the count.
 struct Exchange {
-    double estimate;  // of what it lowers the objective by, before anything settles
-    int spare;        // the centre that goes
-    BestSplit split;  // where it goes to
+    const Move* without;
+    const Move* with;
+    double change;  // of the objective, if the two do not touch each other
 };
 
-// Ways to take one of the few centres that are missed least and give it to one of the few clusters
-// whose split gains most, the most promising first.
-std::vector<Exchange> exchanges(const WeightedPoints& points, const Centres& centres, int kept,
-                                double current) {
-    const Members members = members_of(points, centres);
-    const std::vector<int> spares = least_missed(members, kept, exchange_choices);
-    const std::vector<BestSplit> splits =
-        best_splits(points, centres, kept, members, exchange_choices);
+std::vector<Exchange> exchanges(const Place& place) {
     std::vector<Exchange> found;
-    for (const int spare : spares) {
-        for (const BestSplit& split : splits) {
-            if (split.cluster == spare) continue;
-            const double estimate =
-                split.split.gain - members.removal_cost[static_cast<std::size_t>(spare)];
-            if (estimate > exchange_estimate * current) found.push_back({estimate, spare, split});
+    for (const Move& without : place.moves.without) {
+        for (const Move& with : place.moves.with) {
+            const double change = without.change + with.change;
+            if (without.cluster == with.cluster) continue;
+            if (change < exchange_estimate * place.solution.objective) {
+                found.push_back({&without, &with, change});
+            }
         }
     }
     std::stable_sort(found.begin(), found.end(), [](const Exchange& one, const Exchange& two) {
-        return one.estimate > two.estimate;
+        return one.change < two.change;
     });
-    if (found.size() > exchange_ways) found.resize(exchange_ways);
+    if (found.size() > exchange_trials) found.resize(exchange_trials);
     return found;
 }
 
-// Exchanges centres as long as that lowers the objective: every promising way is glanced at, the
-// best two settle.
-double exchange(const WeightedPoints& points, Centres& centres, int kept, double current) {
-    if (centres.count > exchange_up_to) return current;
-    for (int round = 0; round < exchange_rounds; ++round) {
-        const std::vector<Exchange> ways = exchanges(points, centres, kept, current);
-        if (ways.empty()) break;
-        std::vector<Candidate> trials(ways.size());
-        parallel_for(ways.size(), [&](std::size_t i) {
-            trials[i].centres = centres;
-            apply_split(trials[i].centres, ways[i].split, kept, ways[i].spare);
-            trials[i].objective = lloyd(points, trials[i].centres, kept, glance);
-        });
-        std::stable_sort(trials.begin(), trials.end(),
-                         [](const Candidate& one, const Candidate& two) {
-                             return one.objective < two.objective;
-                         });
-        if (trials.size() > exchange_settled) trials.resize(exchange_settled);
-        bool lowered = false;
-        for (Candidate& trial : trials) {
-            if (lowered || trial.objective > current * exchange_glance) break;
-            trial.objective = lloyd(points, trial.centres, kept, settled);
-            if (trial.objective >= current * (1 - 1e-5)) continue;
-            centres = std::move(trial.centres);
-            current = trial.objective;
-            lowered = true;
-        }
-        if (!lowered) break;
-    }
-    return current;
-}
-
-Centres mean_of(const WeightedPoints& points) {
-    Centres centres{points.dims, 1,
-                    std::vector<float>(static_cast<std::size_t>(points.dims), 0.0F)};
-    lloyd(points, centres, 0, {1, 0});
-    return centres;
-}
-
-// From a count to the next: split, let it settle, exchange.
-bool step_up(const WeightedPoints& points, const Candidate& from, int kept, Candidate& to) {
-    to = from;
-    if (!add_centre(points, to.centres, kept)) return false;
-    to.objective = lloyd(points, to.centres, kept, settled);
-    to.objective = exchange(points, to.centres, kept, to.objective);
+// Settles the most promising exchanges and takes the best; false where none lowers the objective.
+bool exchange(const WeightedPoints& points, Place& place, int kept) {
+    const std::vector<Exchange> ways = exchanges(place);
+    if (ways.empty()) return false;
+    std::vector<Solution> trials;
+    for (const Exchange& way : ways) trials.push_back(way.with->solution);
+    parallel_for(ways.size(), [&](std::size_t i) {
+        drop_centre(trials[i], ways[i].without->cluster);
+        settle(points, trials[i], kept, settled);
+    });
+    const auto best = std::min_element(
+        trials.begin(), trials.end(),
+        [](const Solution& one, const Solution& two) { return one.objective < two.objective; });
+    if (best->objective >= place.solution.objective * (1 - the_same)) return false;
+    place.solution = std::move(*best);
     return true;
 }
 
-// From a count to the one below: the centre that is missed least goes, the rest settles.
-Candidate step_down(const WeightedPoints& points, const Candidate& from, int kept) {
-    Candidate to = from;
-    const int gone = least_missed(members_of(points, from.centres), kept, 1).front();
-    const auto row = to.centres.x.begin() + gone * to.centres.dims;
-    to.centres.x.erase(row, row + to.centres.dims);
-    --to.centres.count;
-    to.objective = lloyd(points, to.centres, kept, settled);
-    to.objective = exchange(points, to.centres, kept, to.objective);
-    return to;
+// A settled solution, bettered by exchanges as long as these help, and its moves.
+Place explore(const WeightedPoints& points, Solution solution, int kept) {
+    Place place{std::move(solution), {}};
+    place.moves = moves_of(points, place.solution, kept);
+    if (place.solution.centres.count > exchange_up_to) return place;
+    for (int round = 0; round < exchange_rounds && exchange(points, place, kept); ++round) {
+        place.moves = moves_of(points, place.solution, kept);
+    }
+    return place;
+}
+
+Place first_place(const WeightedPoints& points, const Centres& kept_centres) {
+    Centres centres = kept_centres;
+    if (centres.count == 0) {
+        centres = {points.dims, 1, std::vector<float>(static_cast<std::size_t>(points.dims), 0.0F)};
+    }
+    Solution solution{centres, Partition(points, centres.count), 0};
+    settle(points, solution, kept_centres.count, {1, 0});
+    return explore(points, std::move(solution), kept_centres.count);
+}
+
+const Solution& best_of(const std::vector<Move>& moves) {
+    return std::min_element(moves.begin(), moves.end(),
+                            [](const Move& one, const Move& two) {
+                                return one.solution.objective < two.solution.objective;
+                            })
+        ->solution;
+}
+
+// What the best of a neighbour's moves leads to takes the place of what is there, where it is
+// better.
+bool improve(const WeightedPoints& points, Place& place, const std::vector<Move>& moves, int kept) {
+    if (moves.empty()) return false;
+    Solution start = best_of(moves);
+    settle(points, start, kept, settled);
+    const double current = place.solution.objective;
+    if (start.objective > current * worth_a_look) return false;
+    if (std::abs(start.objective - current) <= current * the_same) return false;
+    Place other = explore(points, std::move(start), kept);
+    if (other.solution.objective >= current * (1 - the_same)) return false;
+    place = std::move(other);
+    return true;
 }
 
 }  // namespace
 
-bool add_centre(const WeightedPoints& points, Centres& centres, int kept) {
-    const std::vector<BestSplit> best =
-        best_splits(points, centres, kept, members_of(points, centres), 1);
-    if (best.empty()) return false;
-    apply_split(centres, best.front(), kept, -1);
-    return true;
-}
-
 std::vector<Centres> search_counts(const WeightedPoints& points, const Centres& kept_centres,
                                    int max_count, const std::function<void(double)>& progress) {
     const int kept = kept_centres.count;
-    std::vector<Candidate> found(1);
-    found[0].centres = kept > 0 ? kept_centres : mean_of(points);
-    found[0].objective = objective(points, found[0].centres);
-    Candidate next;
-    while (found.back().centres.count < max_count && step_up(points, found.back(), kept, next)) {
-        found.push_back(next);
-        progress(static_cast<double>(next.centres.count) / max_count);
+    std::vector<Place> found;
+    found.push_back(first_place(points, kept_centres));
+    while (found.back().solution.centres.count < max_count && !found.back().moves.with.empty()) {
+        Solution next = best_of(found.back().moves.with);
+        settle(points, next, kept, settled);
+        found.push_back(explore(points, std::move(next), kept));
+        progress(static_cast<double>(found.back().solution.centres.count) / max_count);
     }
-    const auto improve = [](Candidate& current, Candidate&& other) {
-        const bool better = other.objective < current.objective;
-        if (better) current = std::move(other);
-        return better;
-    };
     std::vector<bool> changed(found.size(), false);
     for (std::size_t i = found.size(); i-- > 2;) {
-        changed[i - 1] = improve(found[i - 1], step_down(points, found[i], kept));
+        changed[i - 1] = improve(points, found[i - 1], found[i].moves.without, kept);
     }
     for (std::size_t i = 2; i < found.size(); ++i) {
-        if (changed[i - 1] && step_up(points, found[i - 1], kept, next)) {
-            changed[i] = improve(found[i], std::move(next)) || changed[i];
-        }
+        if (!changed[i - 1]) continue;
+        changed[i] = improve(points, found[i], found[i - 1].moves.with, kept) || changed[i];
     }
     std::vector<Centres> centres;
-    for (Candidate& candidate : found) centres.push_back(std::move(candidate.centres));
+    for (Place& place : found) centres.push_back(std::move(place.solution.centres));
     return centres;
 }
 

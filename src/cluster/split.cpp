@@ -1,8 +1,10 @@
 #include "cluster/split.h"
 
 #include <algorithm>
+#include <array>
 #include <cmath>
-#include <limits>
+
+#include "cluster/nearest.h"
 
 namespace tincture {
 namespace {
@@ -56,32 +58,20 @@ struct Half {
 
 Members members_of(const WeightedPoints& points, const Centres& centres) {
     const auto count = static_cast<std::size_t>(centres.count);
-    const auto dims = static_cast<std::size_t>(points.dims);
     Members members{std::vector<std::size_t>(points.n), std::vector<std::size_t>(count + 1, 0),
                     std::vector<double>(count, 0.0), std::vector<double>(count, 0.0)};
-    std::vector<std::size_t> label(points.n);
+    std::vector<std::uint16_t> label(points.n);
+    std::vector<float> first(points.n);
+    std::vector<float> second(points.n);
+    std::array<const float*, max_dims> plane{};
+    for (int d = 0; d < points.dims; ++d) plane[static_cast<std::size_t>(d)] = points.plane(d);
+    nearest_two_centres({plane.data(), points.dims, points.n}, centres, label.data(), first.data(),
+                        second.data());
     for (std::size_t i = 0; i < points.n; ++i) {
-        float first = std::numeric_limits<float>::max();
-        float second = first;
-        for (std::size_t k = 0; k < count; ++k) {
-            const float* centre = centres.x.data() + k * dims;
-            float squared = 0;
-            for (std::size_t d = 0; d < dims; ++d) {
-                const float delta = points.x[d * points.n + i] - centre[d];
-                squared += delta * delta;
-            }
-            if (squared < first) {
-                second = first;
-                first = squared;
-                label[i] = k;
-            } else if (squared < second) {
-                second = squared;
-            }
-        }
         ++members.start[label[i] + 1];
         const double weight = points.weight[i];
-        members.scatter[label[i]] += weight * static_cast<double>(first);
-        members.removal_cost[label[i]] += weight * static_cast<double>(second - first);
+        members.scatter[label[i]] += weight * static_cast<double>(first[i]);
+        members.removal_cost[label[i]] += weight * static_cast<double>(second[i] - first[i]);
     }
     for (std::size_t k = 0; k < count; ++k) members.start[k + 1] += members.start[k];
     std::vector<std::size_t> next(members.start.begin(), members.start.end() - 1);

@@ -6,6 +6,7 @@
 #include <stdexcept>
 
 #include "cluster/kmeans.h"
+#include "cluster/moves.h"
 #include "cluster/search.h"
 #include "histogram/cells.h"
 #include "support/parallel.h"
@@ -15,18 +16,27 @@ namespace {
 
 // Points, from coarse to fine: centres are searched for on the coarse ones, settle on the cells and
 // are polished on the points themselves. Figures were found by trial, as those of the search.
-constexpr std::size_t coarse_size = 4000;
+constexpr std::size_t coarse_least = 2000;
+constexpr std::size_t coarse_most = 6000;
+constexpr std::size_t points_a_coarse_one = 50;  // between the two
+constexpr double coarser = 1.2;                  // times the edge, until there are few enough
 constexpr double cell_edge = 2;
 constexpr LloydLimits settle_limits = {20, 1e-4};
-constexpr LloydLimits polish_settled = {2, 1e-6};
+constexpr LloydLimits polish_settled = {8, 2e-4};
 constexpr LloydLimits polish_limits = {6, 2e-4};
 constexpr LloydLimits grow_limits = {3, 1e-3};
 
-// The finest cells that are no more than coarse_size, from cells that are finer.
-WeightedPoints coarse_points(const WeightedPoints& cells) {
+// How many points to search on: a search on more finds better centres, where many points give it
+// more to find.
+std::size_t coarse_size(const WeightedPoints& points) {
+    return std::clamp(points.n / points_a_coarse_one, coarse_least, coarse_most);
+}
+
+// The finest cells that are no more than `size`, from cells that are finer.
+WeightedPoints coarse_points(const WeightedPoints& cells, std::size_t size) {
     WeightedPoints coarse = cells;
-    for (double edge = 1.5 * cell_edge; coarse.dims == 3 && coarse.n > coarse_size && edge <= 32;
-         edge *= 1.5) {
+    for (double edge = coarser * cell_edge; coarse.dims == 3 && coarse.n > size && edge <= 32;
+         edge *= coarser) {
         coarse = merge_into_cells(cells, edge);
     }
     return coarse;
@@ -80,9 +90,10 @@ Sweep sweep_counts(const WeightedPoints& points, const SweepOptions& options) {
     Sweep sweep;
     sweep.kept = options.kept.count;
     const WeightedPoints cells = merge_into_cells(points, cell_edge);
-    const bool few = points.n <= coarse_size;
+    const std::size_t few_points = coarse_size(points);
+    const bool few = points.n <= few_points;
     const bool merged = !few && cells.n < points.n / 2;
-    sweep.centres = search_counts(few ? points : coarse_points(cells), options.kept,
+    sweep.centres = search_counts(few ? points : coarse_points(cells, few_points), options.kept,
                                   options.max_count, [&](double part) { report(part * 0.4); });
     reach_further(points, cells, options, sweep.centres);
 

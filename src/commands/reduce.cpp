@@ -106,12 +106,11 @@ SweepOptions sweep_options(const ChoosingOptions& choosing, Centres kept, Progre
 }
 
 void stage_files(OutputSet& files, const Study& study, const IndexedPicture& reduced,
-                 const std::string& json) {
+                 const std::vector<std::uint8_t>& chips, const std::string& json) {
     files.write("reduced.png",
                 [&](const std::filesystem::path& path) { write_indexed_png(path, reduced); });
     files.add("swatches.csv", swatch_csv(study));
     files.add("swatches.svg", swatches_svg(study));
-    const std::vector<std::uint8_t> chips = swatches_png(study);
     files.add("swatches.png", {reinterpret_cast<const char*>(chips.data()), chips.size()});
     files.add("swatches.tokens.json", swatch_tokens(study));
     files.add("curve.csv", curve_csv(study));
@@ -142,6 +141,7 @@ void settle_count(Study& study, const std::optional<int>& asked, bool transparen
 
 void run_reduce(const ReduceOptions& options, const Terminal& terminal) {
     set_thread_count(options.common.threads);
+    start_threads();
     OutputSet files(output_plan(options));
     ProgressBar progress(terminal.progress && !options.common.quiet);
     const std::string subject = options.picture.string();
@@ -171,7 +171,10 @@ void run_reduce(const ReduceOptions& options, const Terminal& terminal) {
 
     progress.stage("writing", 0.9, 1);
     const Palette& palette = palette_at(study, study.count);
-    const Samples<std::uint8_t> labels = label_pixels(picture, table, space, palette);
+    Samples<std::uint8_t> labels;
+    std::vector<std::uint8_t> chips;
+    run_both([&] { labels = label_pixels(picture, table, space, palette); },
+             [&] { chips = swatches_png(study); });
     const std::vector<std::uint64_t> pixels = count_labels(labels, study.count);
     for (const std::uint64_t n : pixels) {
         study.labels.shares.push_back(static_cast<double>(n) /
@@ -183,7 +186,7 @@ void run_reduce(const ReduceOptions& options, const Terminal& terminal) {
                            std::nullopt,  written.icc(),  picture.resolution};
     if (transparency) reduced.transparent_index = static_cast<std::uint8_t>(study.count);
     const std::string json = study_json(study, tincture_version);
-    stage_files(files, study, reduced, json);
+    stage_files(files, study, reduced, chips, json);
     files.commit();
     progress.clear();
 

@@ -8,9 +8,11 @@
 
 namespace tincture {
 
-// n points in `dims` dimensions (1 to 16), each standing for a weight of original points around it.
-// Sums of weight * coordinate are exact, and so independent of any order, as long as weights are
-// whole and coordinates come in steps of 2^-14 (colours of up to 2^32 pixels).
+constexpr int max_dims = 16;
+
+// n points in `dims` dimensions (1 to max_dims), each standing for a weight of original points
+// around it. Sums of weight * coordinate are exact, and so independent of any order, as long as
+// weights are whole and coordinates come in steps of 2^-14 (colours of up to 2^32 pixels).
 struct WeightedPoints {
     int dims = 3;
     std::size_t n = 0;

@@ -6,11 +6,14 @@ namespace tincture {
 
 LargeBlock::LargeBlock(std::size_t bytes) {
     if (bytes == 0) return;
-    void* memory = mmap(nullptr, bytes, PROT_READ | PROT_WRITE, MAP_PRIVATE | MAP_ANONYMOUS, -1, 0);
+    constexpr std::size_t huge_page = std::size_t{2} << 20;
+    // A small block's pages are made at once, which costs less than a fault for each.
+    const int populate = bytes < huge_page ? MAP_POPULATE : 0;
+    void* memory =
+        mmap(nullptr, bytes, PROT_READ | PROT_WRITE, MAP_PRIVATE | MAP_ANONYMOUS | populate, -1, 0);
     if (memory == MAP_FAILED) throw std::bad_alloc();
     // A wish: where it is not granted, small pages serve.
-    constexpr std::size_t huge_page = std::size_t{2} << 20;
-    if (bytes >= huge_page) madvise(memory, bytes, MADV_HUGEPAGE);
+    if (populate == 0) madvise(memory, bytes, MADV_HUGEPAGE);
     memory_ = memory;
     bytes_ = bytes;
 }

@@ -37,6 +37,8 @@ void set_thread_count(int count) {
     thread_limit = count <= 0 ? processor_count() : static_cast<std::size_t>(count);
 }
 
+void start_threads() {}
+
 void parallel_for(std::size_t blocks, const std::function<void(std::size_t)>& body) {
     std::vector<std::exception_ptr> failures(thread_limit);
     std::vector<std::thread> threads;
@@ -64,10 +66,20 @@ void set_thread_count(int count) {
         tbb::global_control::max_allowed_parallelism, threads);
 }
 
+void start_threads() {
+    if (tbb::global_control::active_value(tbb::global_control::max_allowed_parallelism) < 2) return;
+    static std::jthread starter;  // joined when the program ends
+    starter = std::jthread([] { tbb::parallel_for(0, 2, [](int) {}); });
+}
+
 void parallel_for(std::size_t blocks, const std::function<void(std::size_t)>& body) {
     tbb::parallel_for(std::size_t{0}, blocks, body, tbb::simple_partitioner());
 }
 
 #endif
+
+void run_both(const std::function<void()>& one, const std::function<void()>& two) {
+    parallel_for(2, [&](std::size_t i) { (i == 0 ? one : two)(); });
+}
 
 }  // namespace tincture

@@ -8,7 +8,7 @@
 #include <opencv2/core.hpp>
 #include <opencv2/imgcodecs.hpp>
 
-#include "cluster/kmeans.h"
+#include "cluster/partition.h"
 #include "cluster/sweep.h"
 #include "histogram/colour_table.h"
 #include "measure.h"
@@ -175,14 +175,16 @@ double plain_kmeans(const WeightedPoints& points, int count, cv::RNG& random) {
     }
     double before = 0;
     for (int pass = 0; pass < 300; ++pass) {
-        const ClusterSums sums = sum_clusters(points, centres);
-        if (pass > 0 && before - sums.objective <= 1e-6 * before) return sums.objective;
-        before = sums.objective;
+        Partition partition(points, count);
+        partition.assign(points, centres);
+        const double now = partition.objective();
+        if (pass > 0 && before - now <= 1e-6 * before) return now;
+        before = now;
         for (int k = 0; k < count; ++k) {
-            const double weight = sums.weight[static_cast<std::size_t>(k)];
-            for (int d = 0; d < 3 && weight > 0; ++d) {
+            if (partition.empty(k)) continue;
+            for (int d = 0; d < 3; ++d) {
                 centres.row(k)[d] =
-                    static_cast<float>(sums.moment[static_cast<std::size_t>(3 * k + d)] / weight);
+                    static_cast<float>(partition.moment(k, d) / partition.weight(k));
             }
         }
     }

@@ -19,40 +19,6 @@ constexpr LloydLimits to_the_end = {500, 1e-12};
 // More than one block of points, so that partial sums are added up.
 constexpr Clouds several_blocks = {.n = 40'000, .groups = 7, .spread = 20, .heaviest = 1000};
 
-TEST(SumClusters, IsAPlainSum) {
-    Random random(61);
-    for (const int dims : {1, 3, 16}) {
-        Clouds clouds = several_blocks;
-        clouds.dims = dims;
-        const WeightedPoints points = test_support::cloud_points(random, clouds);
-        const Centres centres = test_support::points_as_centres(points, 11, random);
-        std::vector<double> weight(11, 0.0), scatter(11, 0.0);
-        std::vector<double> moment(11 * static_cast<std::size_t>(dims), 0.0);
-        for (std::size_t i = 0; i < points.n; ++i) {
-            const auto [k, squared] = test_support::plain_nearest(points, i, centres);
-            weight[k] += points.weight[i];
-            scatter[k] += points.weight[i] * static_cast<double>(squared);
-            for (int d = 0; d < dims; ++d) {
-                moment[k * static_cast<std::size_t>(dims) + static_cast<std::size_t>(d)] +=
-                    points.weight[i] * static_cast<double>(points.plane(d)[i]);
-            }
-        }
-        for (const int threads : {1, 2, 3, 7}) {
-            set_thread_count(threads);
-            const ClusterSums sums = sum_clusters(points, centres);
-            EXPECT_EQ(sums.weight, weight);  // exact, in any order
-            EXPECT_EQ(sums.moment, moment);
-            double all = 0;
-            for (std::size_t k = 0; k < scatter.size(); ++k) {
-                EXPECT_NEAR(sums.scatter[k], scatter[k], 1e-12 * scatter[k]);
-                all += scatter[k];
-            }
-            EXPECT_NEAR(sums.objective, all, 1e-12 * all);
-        }
-        set_thread_count(0);
-    }
-}
-
 TEST(Objective, IsAPlainSum) {
     Random random(62);
     for (const int dims : {1, 3, 16}) {
@@ -183,7 +149,28 @@ TEST(Lloyd, FillsEmptyClusters) {
         const double before = objective(points, centres);
         const double reached = lloyd(points, centres, 0, to_the_end);
         EXPECT_LT(reached, before);
-        for (const double weight : sum_clusters(points, centres).weight) EXPECT_GT(weight, 0);
+        Partition partition(points, count);
+        partition.assign(points, centres);
+        for (int k = 0; k < count; ++k) EXPECT_FALSE(partition.empty(k));
+    }
+}
+
+// From whatever partition: the centres of the last result moved a little, or none at all.
+TEST(Lloyd, APartitionToStartFromHasNoSay) {
+    Random random(70);
+    const WeightedPoints points = test_support::cloud_points(random, several_blocks);
+    for (int trial = 0; trial < 4; ++trial) {
+        Centres centres = test_support::points_as_centres(points, 12, random);
+        Partition partition(points, 12);
+        partition.assign(points, test_support::points_as_centres(points, 12, random));
+        Centres same = centres;
+        EXPECT_EQ(lloyd(points, centres, 0, {6, 1e-6}, partition),
+                  lloyd(points, same, 0, {6, 1e-6}));
+        EXPECT_EQ(centres.x, same.x);
+        Partition fresh(points, 12);
+        fresh.assign(points, centres);
+        EXPECT_EQ(partition.objective(), fresh.objective());
+        for (int k = 0; k < 12; ++k) EXPECT_EQ(partition.weight(k), fresh.weight(k));
     }
 }
 

@@ -13,22 +13,31 @@ using test_support::Random;
 struct Found {
     std::vector<std::uint16_t> label;
     std::vector<float> squared;
+    std::vector<float> second;
     bool operator==(const Found&) const = default;
 };
 
 // The first `n` points from `start` on; nothing behind them may be written.
 Found vector_form(const WeightedPoints& points, std::size_t start, std::size_t n,
                   const Centres& centres) {
-    Found found{std::vector<std::uint16_t>(n + 1, 9999), std::vector<float>(n + 1, -1.0F)};
+    Found found{std::vector<std::uint16_t>(n + 1, 9999), std::vector<float>(n + 1, -1.0F),
+                std::vector<float>(n + 1, -1.0F)};
     std::vector<const float*> planes;
     for (int d = 0; d < points.dims; ++d) planes.push_back(points.plane(d) + start);
     nearest_centres({planes.data(), points.dims, n}, centres, found.label.data(),
                     found.squared.data());
-    EXPECT_EQ(found.label[n], 9999);
-    EXPECT_EQ(found.squared[n], -1.0F);
-    found.label.pop_back();
-    found.squared.pop_back();
-    return found;
+    Found two = found;
+    nearest_two_centres({planes.data(), points.dims, n}, centres, two.label.data(),
+                        two.squared.data(), two.second.data());
+    EXPECT_EQ(found.label, two.label);
+    EXPECT_EQ(found.squared, two.squared);
+    EXPECT_EQ(two.label[n], 9999);
+    EXPECT_EQ(two.squared[n], -1.0F);
+    EXPECT_EQ(two.second[n], -1.0F);
+    two.label.pop_back();
+    two.squared.pop_back();
+    two.second.pop_back();
+    return two;
 }
 
 Found plain_form(const WeightedPoints& points, std::size_t start, std::size_t n,
@@ -38,6 +47,13 @@ Found plain_form(const WeightedPoints& points, std::size_t start, std::size_t n,
         const test_support::Nearest nearest = test_support::plain_nearest(points, i, centres);
         found.label.push_back(nearest.label);
         found.squared.push_back(nearest.squared);
+        // The second nearest is the nearest of the others.
+        Centres others = centres;
+        const auto row = others.x.begin() + nearest.label * others.dims;
+        others.x.erase(row, row + others.dims);
+        --others.count;
+        found.second.push_back(
+            others.count == 0 ? 3.0e38F : test_support::plain_nearest(points, i, others).squared);
     }
     return found;
 }
