@@ -1,7 +1,11 @@
 // The only file that exits: turns errors into a line on standard error and an exit status.
 #include <malloc.h>
+#include <sys/mman.h>
+#include <unistd.h>
 
 #include <csignal>
+#include <cstdint>
+#include <cstdlib>
 #include <iostream>
 #include <new>
 
@@ -36,10 +40,28 @@ void listen_for_signals() {
     std::signal(SIGXFSZ, SIG_IGN);
 }
 
-// Arrays of a few megabytes come and go in every step: kept, they are not cleared again and again.
-void keep_freed_memory() {
-    mallopt(M_MMAP_THRESHOLD, 32 << 20);
-    mallopt(M_TRIM_THRESHOLD, 64 << 20);
+// A page fault can take longer than all that is done with the page: the heap gets huge pages where
+// the system grants them, the part before the first of them is made at once, and what is freed is
+// kept for the next step.
+void prepare_heap() {
+    constexpr int most_for_the_heap = 32 << 20;  // larger arrays come and go on their own
+    constexpr int growth = 64 << 20;             // of addresses; memory is taken as it is used
+    constexpr std::size_t probe = 256 << 10;     // more than the heap starts with
+    constexpr std::uintptr_t page = 4 << 10;
+    constexpr std::uintptr_t huge_page = 2 << 20;
+    mallopt(M_MMAP_THRESHOLD, most_for_the_heap);
+    mallopt(M_TRIM_THRESHOLD, 4 * growth);
+    mallopt(M_TOP_PAD, growth);
+    void* volatile grown = std::malloc(probe);  // volatile: so that it is not left out
+    const auto start = reinterpret_cast<std::uintptr_t>(grown) / page * page;
+    std::free(grown);
+    const auto end = reinterpret_cast<std::uintptr_t>(sbrk(0));
+    // A huge page can only be where nothing was touched yet.
+    const std::uintptr_t first_huge = (start + probe + page + huge_page) / huge_page * huge_page;
+    if (start == 0 || first_huge >= end) return;
+    // Wishes: where they are not granted, pages come one by one.
+    madvise(reinterpret_cast<void*>(start), first_huge - start, MADV_POPULATE_WRITE);
+    madvise(reinterpret_cast<void*>(first_huge), end - first_huge, MADV_HUGEPAGE);
 }
 
 int fail(int status, const std::string& subject, const std::string& message) {
@@ -63,7 +85,7 @@ int run(int argc, char** argv) {
 
 int main(int argc, char** argv) {
     listen_for_signals();
-    keep_freed_memory();
+    prepare_heap();
     try {
         return run(argc, argv);
     } catch (const tincture::Error& error) {

@@ -71,7 +71,7 @@ float weighted_quantile(std::span<const float> values, std::span<const std::uint
                         double share) {
     // The bits of floats that are not negative are ordered as the floats are: count by their high
     // bits, then sort only what shares those of the quantile.
-    constexpr int low_bits = 15;
+    constexpr int low_bits = 18;  // few enough bins to stay near
     std::vector<std::uint64_t> bins(std::size_t{1} << (32 - 1 - low_bits), 0);
     std::uint64_t total = 0;
     for (std::size_t i = 0; i < values.size(); ++i) {

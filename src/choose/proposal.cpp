@@ -9,10 +9,6 @@
 namespace tincture {
 namespace {
 
-std::string colours(int count) {
-    return std::to_string(count) + (count == 1 ? " colour" : " colours");
-}
-
 std::optional<int> count_of(const std::vector<Vote>& votes, std::string_view criterion) {
     for (const Vote& vote : votes) {
         if (vote.criterion == criterion) return vote.count;

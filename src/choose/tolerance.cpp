@@ -12,10 +12,6 @@ int roughly(double count) {
     return static_cast<int>(std::ceil(count / step) * step);
 }
 
-std::string colours(int count) {
-    return std::to_string(count) + (count == 1 ? " colour" : " colours");
-}
-
 }  // namespace
 
 Vote tolerance_vote(const Study& study) {
@@ -37,8 +33,7 @@ Vote tolerance_vote(const Study& study) {
                          ", where 95 % of the pixels are within " + fixed(last.p95_de00, 1) +
                          " CIEDE2000: it would take a tolerance of that";
     if (ratio < 6) {
-        reason += ", or roughly " + std::to_string(roughly(last.count * ratio * ratio * ratio)) +
-                  " colours";
+        reason += ", or roughly " + colours(roughly(last.count * ratio * ratio * ratio));
     }
     return {"tolerance", std::nullopt, reason};
 }

@@ -25,11 +25,10 @@ struct Sweep {
     int kept = 0;
 };
 
-// Each count starts from the one before: the cluster whose split gains most is split, then centres
-// are exchanged (the one missed least for a half of the one split best) as long as that helps. This
-// search runs on coarse cells of the points; its results are polished on the points themselves. The
-// objective never rises with the count. Deterministic, for any number of threads. The counts end at
-// the number of points, where the objective is the inner scatter.
+// Good centres of every count are searched for on coarse cells of the points (search_counts()), and
+// polished on the points themselves. The objective never rises with the count. Deterministic, for
+// any number of threads. The counts end at the number of points, where the objective is the inner
+// scatter.
 [[nodiscard]] Sweep sweep_counts(const WeightedPoints& points, const SweepOptions& options);
 
 }  // namespace tincture

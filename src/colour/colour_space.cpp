@@ -129,16 +129,8 @@ struct ColourSpace::Impl {
     }
 };
 
-ColourSpace::ColourSpace(std::unique_ptr<Impl> impl) : impl_(std::move(impl)) {}
-ColourSpace::ColourSpace(ColourSpace&&) noexcept = default;
-ColourSpace& ColourSpace::operator=(ColourSpace&&) noexcept = default;
-ColourSpace::~ColourSpace() = default;
-
-ColourSpace ColourSpace::standard(ColourModel model) {
-    if (model == ColourModel::cmyk) {
-        throw std::invalid_argument("there is no standard CMYK colour space");
-    }
-    auto impl = std::make_unique<Impl>();
+std::shared_ptr<const ColourSpace::Impl> ColourSpace::standard_impl(ColourModel model) {
+    auto impl = std::make_shared<Impl>();
     impl->model = model;
     impl->standard = true;
     impl->description = "sRGB";
@@ -146,12 +138,24 @@ ColourSpace ColourSpace::standard(ColourModel model) {
         model == ColourModel::grey ? srgb_grey_profile(impl->context.get())
                                    : ProfileHandle(cmsCreate_sRGBProfileTHR(impl->context.get()));
     impl->build(profile.get());
-    return ColourSpace(std::move(impl));
+    return impl;
+}
+
+ColourSpace ColourSpace::standard(ColourModel model) {
+    if (model == ColourModel::cmyk) {
+        throw std::invalid_argument("there is no standard CMYK colour space");
+    }
+    if (model == ColourModel::grey) {
+        static const std::shared_ptr<const Impl> grey = standard_impl(model);
+        return ColourSpace(grey);
+    }
+    static const std::shared_ptr<const Impl> rgb = standard_impl(ColourModel::rgb);
+    return ColourSpace(rgb);
 }
 
 ColourSpace ColourSpace::from_icc(std::span<const std::uint8_t> icc, ColourModel model,
                                   const std::string& subject) {
-    auto impl = std::make_unique<Impl>();
+    auto impl = std::make_shared<Impl>();
     impl->model = model;
     impl->subject = subject;
     impl->icc.assign(icc.begin(), icc.end());

@@ -8,6 +8,7 @@
 #include <optional>
 #include <span>
 #include <string>
+#include <utility>
 #include <vector>
 
 #include "colour/colour_model.h"
@@ -28,6 +29,7 @@ struct LabPlanes {
     float* b;
 };
 
+// A value: copies share what was built, which nothing changes afterwards.
 class ColourSpace {
   public:
     // sRGB; for grey, the neutrals of sRGB. CMYK has no default: throws std::invalid_argument.
@@ -38,10 +40,6 @@ class ColourSpace {
     // channels.
     static ColourSpace from_icc(std::span<const std::uint8_t> icc, ColourModel model,
                                 const std::string& subject);
-
-    ColourSpace(ColourSpace&&) noexcept;
-    ColourSpace& operator=(ColourSpace&&) noexcept;
-    ~ColourSpace();
 
     [[nodiscard]] ColourModel model() const noexcept;
     [[nodiscard]] bool is_standard() const noexcept;  // made by standard()
@@ -63,8 +61,9 @@ class ColourSpace {
 
   private:
     struct Impl;
-    explicit ColourSpace(std::unique_ptr<Impl> impl);
-    std::unique_ptr<Impl> impl_;
+    static std::shared_ptr<const Impl> standard_impl(ColourModel model);
+    explicit ColourSpace(std::shared_ptr<const Impl> impl) : impl_(std::move(impl)) {}
+    std::shared_ptr<const Impl> impl_;
 };
 
 }  // namespace tincture

@@ -105,17 +105,20 @@ SweepOptions sweep_options(const ChoosingOptions& choosing, Centres kept, Progre
     return options;
 }
 
-void stage_files(OutputSet& files, const Study& study, const IndexedPicture& reduced,
-                 const std::vector<std::uint8_t>& chips, const std::string& json) {
-    files.write("reduced.png",
-                [&](const std::filesystem::path& path) { write_indexed_png(path, reduced); });
-    files.add("swatches.csv", swatch_csv(study));
-    files.add("swatches.svg", swatches_svg(study));
-    files.add("swatches.png", {reinterpret_cast<const char*>(chips.data()), chips.size()});
-    files.add("swatches.tokens.json", swatch_tokens(study));
-    files.add("curve.csv", curve_csv(study));
-    files.add("curve.svg", curve_svg(study));
-    files.add("study.json", json);
+struct NamedFile {
+    std::string name;
+    std::string bytes;
+};
+
+// What shows the study, not the picture.
+std::vector<NamedFile> drawings_of(const Study& study) {
+    const std::vector<std::uint8_t> chips = swatches_png(study);
+    return {{"swatches.csv", swatch_csv(study)},
+            {"swatches.svg", swatches_svg(study)},
+            {"swatches.png", {chips.begin(), chips.end()}},
+            {"swatches.tokens.json", swatch_tokens(study)},
+            {"curve.csv", curve_csv(study)},
+            {"curve.svg", curve_svg(study)}};
 }
 
 // The palette as written, with one more colour for what is transparent.
@@ -124,6 +127,26 @@ std::vector<Rgb8> written_palette(const Palette& palette, bool transparency) {
     for (const Swatch& swatch : palette.swatches) colours.push_back(swatch.written);
     if (transparency) colours.push_back({});
     return colours;
+}
+
+// Labels the pixels and stages the picture in its palette.
+LabelFacts write_reduced(OutputSet& files, const Study& study, const Picture& picture,
+                         const ColourTable& table, const ColourSpace& space,
+                         const ColourSpace& written) {
+    const Palette& palette = palette_at(study, study.count);
+    const Samples<std::uint8_t> labels = label_pixels(picture, table, space, palette);
+    LabelFacts facts;
+    for (const std::uint64_t n : count_labels(labels, study.count)) {
+        facts.shares.push_back(static_cast<double>(n) / static_cast<double>(table.opaque_pixels));
+    }
+    const bool transparency = !picture.opaque.empty();
+    const std::vector<Rgb8> colours = written_palette(palette, transparency);
+    IndexedPicture reduced{picture.width, picture.height, labels.data(),     colours,
+                           std::nullopt,  written.icc(),  picture.resolution};
+    if (transparency) reduced.transparent_index = static_cast<std::uint8_t>(study.count);
+    files.write("reduced.png",
+                [&](const std::filesystem::path& path) { write_indexed_png(path, reduced); });
+    return facts;
 }
 
 // The count to use, which is at most what the picture holds.
@@ -170,23 +193,14 @@ void run_reduce(const ReduceOptions& options, const Terminal& terminal) {
     settle_count(study, options.choosing.count, !picture.opaque.empty());
 
     progress.stage("writing", 0.9, 1);
-    const Palette& palette = palette_at(study, study.count);
-    Samples<std::uint8_t> labels;
-    std::vector<std::uint8_t> chips;
-    run_both([&] { labels = label_pixels(picture, table, space, palette); },
-             [&] { chips = swatches_png(study); });
-    const std::vector<std::uint64_t> pixels = count_labels(labels, study.count);
-    for (const std::uint64_t n : pixels) {
-        study.labels.shares.push_back(static_cast<double>(n) /
-                                      static_cast<double>(table.opaque_pixels));
-    }
-    const bool transparency = !picture.opaque.empty();
-    const std::vector<Rgb8> colours = written_palette(palette, transparency);
-    IndexedPicture reduced{picture.width, picture.height, labels.data(),     colours,
-                           std::nullopt,  written.icc(),  picture.resolution};
-    if (transparency) reduced.transparent_index = static_cast<std::uint8_t>(study.count);
+    LabelFacts labels;
+    std::vector<NamedFile> drawings;
+    run_both([&] { labels = write_reduced(files, study, picture, table, space, written); },
+             [&] { drawings = drawings_of(study); });
+    study.labels = std::move(labels);
+    for (const NamedFile& file : drawings) files.add(file.name, file.bytes);
     const std::string json = study_json(study, tincture_version);
-    stage_files(files, study, reduced, chips, json);
+    files.add("study.json", json);
     files.commit();
     progress.clear();
 

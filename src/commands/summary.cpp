@@ -48,10 +48,6 @@ std::string remark(const std::string& text, const Terminal& terminal) {
     return faint(lines, terminal) + "\n";
 }
 
-std::string number_of_colours(int count) {
-    return std::to_string(count) + (count == 1 ? " colour" : " colours");
-}
-
 std::string picture_lines(const Study& study, const Terminal& terminal) {
     const PictureFacts& facts = study.picture;
     const char* model = facts.channels == 1 ? "grey" : facts.channels == 3 ? "RGB" : "CMYK";
@@ -70,9 +66,9 @@ std::string picture_lines(const Study& study, const Terminal& terminal) {
 // Why the count is another than the proposed one; empty if it is not.
 std::string about_count(const Study& study, const std::optional<int>& asked) {
     if (!asked) return "";
-    const std::string used = number_of_colours(study.count);
+    const std::string used = colours(study.count);
     if (study.count == *asked) return used + ", as asked. ";
-    return number_of_colours(*asked) + " were asked for, but the picture has only " +
+    return colours(*asked) + " were asked for, but the picture has only " +
            std::to_string(study.count) + ": " + used + (study.count == 1 ? " is" : " are") +
            " used. ";
 }
@@ -82,7 +78,7 @@ std::string proposal_lines(const Study& study, const std::optional<int>& asked,
     const Proposal& proposal = study.proposal;
     const std::string before = about_count(study, asked);
     std::string text = paragraph(before + "The proposal is " + proposal.sentence, terminal);
-    const std::string count = number_of_colours(asked ? study.count : proposal.count);
+    const std::string count = colours(asked ? study.count : proposal.count);
     // Where a line ends within it, it stays plain.
     const std::size_t at = text.find(count);
     if (at != std::string::npos) text.replace(at, count.size(), bold(count, terminal));
@@ -272,7 +268,7 @@ std::string file_lines(const Study& study, const Terminal& terminal, const std::
         text += wrapped(flush_left(std::string(margin, ' ') + name, column), what,
                         width_of(terminal), column);
     };
-    add("reduced.png", "the picture in " + number_of_colours(study.count));
+    add("reduced.png", "the picture in " + colours(study.count));
     add("swatches.svg", "its palette, also as .png, .csv and .tokens.json");
     add("curve.svg", "what each count loses, also as .csv");
     add("study.json", "everything that was measured");

@@ -28,10 +28,6 @@ constexpr double margin = 28;
 constexpr Box error_frame{plot_left, 168, plot_right - plot_left, 230};
 constexpr Box difference_frame{plot_left, 446, plot_right - plot_left, 180};
 
-std::string colours(int count) {
-    return std::to_string(count) + (count == 1 ? " colour" : " colours");
-}
-
 // Where a palette is used as given, nothing is proposed.
 bool has_proposal(const Study& study) {
     return study.proposal.count > 0;

@@ -4,7 +4,8 @@
 
 #include <algorithm>
 #include <cstddef>
-#include <map>
+#include <cstring>
+#include <functional>
 #include <new>
 #include <optional>
 #include <string_view>
@@ -47,9 +48,7 @@ class RowDeflater {
     void add(const std::uint8_t* row) {
         constexpr std::uint8_t up_filter = 2;
         row_[0] = up_filter;
-        for (std::size_t i = 0; i < above_.size(); ++i) {
-            row_[i + 1] = static_cast<std::uint8_t>(row[i] - above_[i]);
-        }
+        std::transform(row, row + above_.size(), above_.begin(), row_.begin() + 1, std::minus<>());
         std::copy_n(row, above_.size(), above_.begin());
         stream_.next_in = row_.data();
         stream_.avail_in = static_cast<uInt>(row_.size());
@@ -78,22 +77,27 @@ class RowDeflater {
     Bytes packed_;
 };
 
-// Finds the index of a colour, in the order in which colours appear.
+// Finds the index of a colour, in the order in which colours appear: open addressing in a table at
+// most half full.
 class ColourIndex {
   public:
-    // False where the row brings more colours than an index holds.
+    // Writes the indices of a row, which may hold those of the row before it; false where the row
+    // brings more colours than an index holds.
     bool add(std::span<const Rgb8> row, std::uint8_t* indices) {
-        constexpr std::size_t most_colours = 256;
-        for (const Rgb8& pixel : row) {
-            if (palette_.empty() || pixel != last_colour_) {
-                const auto [entry, added] =
-                    index_of_.try_emplace(pixel, static_cast<std::uint8_t>(palette_.size()));
-                if (added && palette_.size() == most_colours) return false;
-                if (added) palette_.push_back(pixel);
-                last_colour_ = pixel;
-                last_index_ = entry->second;
+        // Most rows of a drawing are the same as the one above.
+        if (row.size() == row_above_.size() &&
+            std::memcmp(row.data(), row_above_.data(), row.size_bytes()) == 0) {
+            return true;
+        }
+        row_above_.assign(row.begin(), row.end());
+        for (std::size_t x = 0; x < row.size(); ++x) {
+            if (x > 0 && row[x] == row[x - 1]) {
+                indices[x] = indices[x - 1];
+                continue;
             }
-            *indices++ = last_index_;
+            const std::optional<std::uint8_t> index = index_of(row[x]);
+            if (!index) return false;
+            indices[x] = *index;
         }
         return true;
     }
@@ -101,10 +105,24 @@ class ColourIndex {
     [[nodiscard]] const std::vector<Rgb8>& palette() const { return palette_; }
 
   private:
+    std::optional<std::uint8_t> index_of(Rgb8 colour) {
+        constexpr std::size_t most_colours = 256;
+        const std::uint32_t bits =
+            std::uint32_t{colour.r} << 16 | std::uint32_t{colour.g} << 8 | std::uint32_t{colour.b};
+        std::size_t at = bits * 0x9E3779B1U >> 23;
+        for (; place_[at] != free_place; at = (at + 1) % place_.size()) {
+            if (palette_[place_[at]] == colour) return static_cast<std::uint8_t>(place_[at]);
+        }
+        if (palette_.size() == most_colours) return std::nullopt;
+        place_[at] = static_cast<std::uint16_t>(palette_.size());
+        palette_.push_back(colour);
+        return static_cast<std::uint8_t>(place_[at]);
+    }
+
+    static constexpr std::uint16_t free_place = 0xFFFF;
     std::vector<Rgb8> palette_;
-    std::map<Rgb8, std::uint8_t> index_of_;
-    Rgb8 last_colour_;  // rows are mostly runs
-    std::uint8_t last_index_ = 0;
+    std::vector<std::uint16_t> place_ = std::vector<std::uint16_t>(512, free_place);
+    std::vector<Rgb8> row_above_;
 };
 
 struct Packed {

@@ -120,8 +120,7 @@ class Sheet {
     void head() {
         const double width = look_.width - 2 * margin;
         const std::string file = legible(study_.picture.file);
-        const std::string count =
-            std::to_string(study_.count) + (study_.count == 1 ? " colour" : " colours");
+        const std::string count = colours(study_.count);
         sheet_.title = "Palette of " + file + ": " + count;
         for (const Swatch& swatch : palette_.swatches) {
             sheet_.description +=

@@ -46,8 +46,7 @@ Json token(const Swatch& swatch) {
 
 std::string swatch_tokens(const Study& study) {
     Json group = Json::object();
-    group["$description"] = "The picture in " + std::to_string(study.count) +
-                            (study.count == 1 ? " colour" : " colours") + ": " + study.picture.file;
+    group["$description"] = "The picture in " + colours(study.count) + ": " + study.picture.file;
     for (const Swatch& swatch : palette_at(study, study.count).swatches) {
         std::string name = token_name(swatch.name);
         while (group.contains(name)) name += " again";

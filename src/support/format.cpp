@@ -32,6 +32,10 @@ std::string readable(double value, int decimals) {
     return text;
 }
 
+std::string colours(int count) {
+    return std::to_string(count) + (count == 1 ? " colour" : " colours");
+}
+
 std::string csv_field(std::string_view text) {
     if (text.find_first_of(",\"\r\n") == std::string_view::npos) return std::string(text);
     std::string quoted = "\"";

@@ -16,6 +16,9 @@ namespace tincture {
 // fixed() with a true minus sign (U+2212), for text that people read.
 [[nodiscard]] std::string readable(double value, int decimals);
 
+// "1 colour", "7 colours".
+[[nodiscard]] std::string colours(int count);
+
 // A CSV field (RFC 4180): in quotes only where it must be.
 [[nodiscard]] std::string csv_field(std::string_view text);
 

@@ -11,10 +11,12 @@
 
 namespace tincture::benchmarks {
 
+using Clock = std::chrono::steady_clock;
+
 double seconds(const std::function<void()>& work) {
-    const auto start = std::chrono::steady_clock::now();
+    const Clock::time_point start = Clock::now();
     work();
-    return std::chrono::duration<double>(std::chrono::steady_clock::now() - start).count();
+    return std::chrono::duration<double>(Clock::now() - start).count();
 }
 
 // fork() and not posix_spawn(): that lends the child its parent's memory until it starts, and the
@@ -27,18 +29,30 @@ ProgramRun run_program(const std::vector<std::string>& arguments) {
     argv.push_back(nullptr);
     ProgramRun run;
     rusage usage{};
-    run.seconds = seconds([&] {
-        const pid_t child = fork();
-        if (child < 0) throw std::runtime_error("cannot start " + arguments[0]);
-        if (child == 0) {
-            const int nowhere = open("/dev/null", O_WRONLY);
-            dup2(nowhere, 1);
-            dup2(nowhere, 2);
-            execv(argv[0], argv.data());
-            _exit(127);
-        }
-        wait4(child, &run.status, 0, &usage);
-    });
+    // The child says when it starts the program: copying this process takes a time of its own.
+    int pipe_ends[2];
+    if (pipe(pipe_ends) != 0) throw std::runtime_error("cannot make a pipe");
+    const pid_t child = fork();
+    if (child < 0) throw std::runtime_error("cannot start " + arguments[0]);
+    if (child == 0) {
+        const int nowhere = open("/dev/null", O_WRONLY);
+        dup2(nowhere, 1);
+        dup2(nowhere, 2);
+        close(pipe_ends[0]);
+        fcntl(pipe_ends[1], F_SETFD, FD_CLOEXEC);
+        const Clock::time_point start = Clock::now();
+        if (write(pipe_ends[1], &start, sizeof start) != sizeof start) _exit(127);
+        execv(argv[0], argv.data());
+        _exit(127);
+    }
+    close(pipe_ends[1]);
+    wait4(child, &run.status, 0, &usage);
+    const Clock::time_point end = Clock::now();
+    Clock::time_point start;
+    const bool started = read(pipe_ends[0], &start, sizeof start) == sizeof start;
+    close(pipe_ends[0]);
+    if (!started) throw std::runtime_error("cannot start " + arguments[0]);
+    run.seconds = std::chrono::duration<double>(end - start).count();
     run.peak_bytes = static_cast<double>(usage.ru_maxrss) * 1024;
     return run;
 }

@@ -34,6 +34,12 @@ TEST(Format, ReadableHasATrueMinus) {
     EXPECT_EQ(readable(-0.01, 1), "0.0");
 }
 
+TEST(Format, OneColourIsNotSeveral) {
+    EXPECT_EQ(colours(1), "1 colour");
+    EXPECT_EQ(colours(2), "2 colours");
+    EXPECT_EQ(colours(256), "256 colours");
+}
+
 TEST(Format, CsvFieldsAreQuotedOnlyWhereNeeded) {
     EXPECT_EQ(csv_field("mid soft green"), "mid soft green");
     EXPECT_EQ(csv_field(""), "");
