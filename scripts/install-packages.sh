@@ -17,6 +17,7 @@ test_packages=(
     libopencv-core-dev libopencv-imgcodecs-dev  # what the benchmarks compare with
     python3 python3-pytest python3-numpy python3-pil python3-jsonschema
     clang-14 libclang-rt-14-dev clang-format-14
+    qemu-user  # older processors, emulated: the same bytes there
 )
 
 wanted=("${build_packages[@]}")

@@ -1,5 +1,5 @@
 #!/usr/bin/env bash
-# Installs what is missing, builds tincture three ways and runs every test. Says how long each stage
+# Installs what is missing, builds tincture with both compilers and runs every test. Says how long each stage
 # took; ends with the closing line of the test runner over all suites.
 #   scripts/test.sh
 set -euo pipefail
@@ -27,8 +27,7 @@ check_format() {
 stage "Debian packages" scripts/install-packages.sh test
 stage "formatting" check_format
 stage "build with g++, release" build release
-stage "build with clang 14, release" build clang
-stage "build with AddressSanitizer and UndefinedBehaviorSanitizer" build dev
+stage "build with clang 14, AddressSanitizer and UndefinedBehaviorSanitizer" build dev
 stage "tests under the sanitizers" run_tests dev
 stage "tests, release" run_tests release
 

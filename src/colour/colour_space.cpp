@@ -59,7 +59,7 @@ std::string description_of(cmsHPROFILE profile) {
     return text.data();
 }
 
-const char* model_name(cmsColorSpaceSignature signature) {
+const char* model_name(cmsUInt32Number signature) {
     switch (signature) {
         case cmsSigGrayData:
             return "grey";
@@ -165,8 +165,9 @@ ColourSpace ColourSpace::from_icc(std::span<const std::uint8_t> icc, ColourModel
         throw Error(ErrorKind::input, subject,
                     "the colour profile is damaged; name one that is sound with --profile FILE");
     }
-    const cmsColorSpaceSignature found = cmsGetColorSpace(profile.get());
-    const cmsProfileClassSignature kind = cmsGetDeviceClass(profile.get());
+    // Numbers: a damaged profile holds some that are none of the enumerations' values.
+    const auto found = static_cast<cmsUInt32Number>(cmsGetColorSpace(profile.get()));
+    const auto kind = static_cast<cmsUInt32Number>(cmsGetDeviceClass(profile.get()));
     impl->grey_as_rgb = model == ColourModel::grey && found == cmsSigRgbData;
     const bool describes_a_device = kind == cmsSigInputClass || kind == cmsSigDisplayClass ||
                                     kind == cmsSigOutputClass || kind == cmsSigColorSpaceClass;

@@ -1,7 +1,6 @@
 """Checks the surroundings, and runs that several tests look at."""
 import os
 
-import numpy as np
 import pytest
 
 import pictures
@@ -54,7 +53,6 @@ def wide(tmp_path_factory):
 
 
 @pytest.fixture(scope="session")
-def big_picture(tmp_path_factory):
-    """Twelve megapixels of noise: slow enough to be watched, on one processor above all."""
-    folder = tmp_path_factory.mktemp("big")
-    return pictures.save_png(folder / "big.png", np.tile(pictures.noisy(1000, 750), (4, 4, 1)))
+def slow_picture(tmp_path_factory):
+    """Noise, every pixel of its own colour: slow enough to be watched when many counts are asked for."""
+    return pictures.save_png(tmp_path_factory.mktemp("slow") / "slow.png", pictures.noisy(400, 300, spread=40.0))

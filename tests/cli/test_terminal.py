@@ -11,6 +11,10 @@ import pytest
 import pictures
 from running import Terminal, environment, names_in, run, run_in_terminal, study_of
 
+# Many counts on one thread: work that lasts well over half a second, when progress begins to show.
+SLOWLY = ("--threads", "1", "--at-most", "128")
+VERY_SLOWLY = ("--threads", "1", "--at-most", "256")
+
 ESCAPE = re.compile(r"\x1b\[[0-9;?]*[A-Za-z]")
 BLOCKS = re.compile("[\u2580-\u259f]")
 
@@ -120,8 +124,8 @@ def test_a_given_count_is_marked_beside_the_proposal(place):
     assert study_of(place / "p-tincture")["proposal"]["count"] == proposed != 9
 
 
-def test_progress_is_shown_on_a_terminal_and_taken_away(big_picture, tmp_path):
-    result = run_in_terminal("reduce", big_picture, "--threads", "1", cwd=tmp_path, screens=("err",))
+def test_progress_is_shown_on_a_terminal_and_taken_away(slow_picture, tmp_path):
+    result = run_in_terminal("reduce", slow_picture, *SLOWLY, cwd=tmp_path, screens=("err",))
     assert result.status == 0 and "\x1b" not in result.out
     shown = [int(part) for part in re.findall(r"(\d+) % ", result.err)]
     assert len(shown) > 3 and shown == sorted(shown) and 0 <= shown[0] and shown[-1] <= 100
@@ -129,17 +133,17 @@ def test_progress_is_shown_on_a_terminal_and_taken_away(big_picture, tmp_path):
     assert "\n" not in result.err, "one line, drawn again and again"
 
 
-def test_no_progress_in_a_pipe_with_quiet_or_on_a_dumb_terminal(big_picture, tmp_path):
-    assert run("reduce", big_picture, "--threads", "1", "--out", "a", cwd=tmp_path).err == ""
+def test_no_progress_in_a_pipe_with_quiet_or_on_a_dumb_terminal(slow_picture, tmp_path):
+    assert run("reduce", slow_picture, *SLOWLY, "--out", "a", cwd=tmp_path).err == ""
     for name, options, env in (("b", ("--quiet",), None), ("c", (), environment(TERM="dumb"))):
-        result = run_in_terminal("reduce", big_picture, "--threads", "1", "--out", name, *options, cwd=tmp_path,
+        result = run_in_terminal("reduce", slow_picture, *SLOWLY, "--out", name, *options, cwd=tmp_path,
                                  screens=("err",), env=env)
         assert (result.status, result.err) == (0, "")
 
 
 @pytest.mark.parametrize("number", [signal.SIGINT, signal.SIGTERM, signal.SIGHUP])
-def test_a_signal_leaves_nothing_behind(big_picture, tmp_path, number):
-    running = Terminal("reduce", big_picture, "--threads", "1", cwd=tmp_path)
+def test_a_signal_leaves_nothing_behind(slow_picture, tmp_path, number):
+    running = Terminal("reduce", slow_picture, *VERY_SLOWLY, cwd=tmp_path)
     running.read_until(lambda: " % " in running.screens["err"].text())  # in the middle of the work
     assert [name for name in os.listdir(tmp_path) if name.startswith(".")], "it has begun to stage"
     start = time.monotonic()
@@ -151,10 +155,10 @@ def test_a_signal_leaves_nothing_behind(big_picture, tmp_path, number):
     assert names_in(tmp_path) == []
 
 
-def test_a_signal_leaves_the_files_of_an_earlier_run(big_picture, place):
+def test_a_signal_leaves_the_files_of_an_earlier_run(slow_picture, place):
     run("reduce", "p.png", "--out", "out", "--quiet", cwd=place)
     before = {path: path.read_bytes() for path in (place / "out").iterdir()}
-    running = Terminal("reduce", big_picture, "--out", "out", "--force", cwd=place)
+    running = Terminal("reduce", slow_picture, *VERY_SLOWLY, "--out", "out", "--force", cwd=place)
     running.read_until(lambda: " % " in running.screens["err"].text())
     os.kill(running.process.pid, signal.SIGINT)
     assert running.finish().status == -signal.SIGINT
