@@ -9,7 +9,12 @@ std::span<const CurvePoint> swept(const Study& study) {
 }
 
 std::vector<Vote> collect_votes(const Study& study) {
-    return {knee_vote(study), tolerance_vote(study), distinct_colours_vote(study)};
+    return {inks_vote(study),
+            knee_vote(study),
+            look_alikes_vote(study),
+            tolerance_vote(study),
+            distinct_colours_vote(study),
+            second_difference_vote(study)};
 }
 
 }  // namespace tincture

@@ -13,6 +13,9 @@ namespace tincture {
 // The part of the curve that has no gaps: a count asked for beyond the sweep is left out.
 [[nodiscard]] std::span<const CurvePoint> swept(const Study& study);
 
+// How many colours stand out in flat areas.
+[[nodiscard]] Vote inks_vote(const Study& study);
+
 // The count at which the logarithm of the error stops falling steeply.
 [[nodiscard]] Vote knee_vote(const Study& study);
 
@@ -23,8 +26,14 @@ struct CountRange {
 };
 [[nodiscard]] std::optional<CountRange> knee_range(const Study& study);
 
+// The count at which the logarithm of the error bends most.
+[[nodiscard]] Vote second_difference_vote(const Study& study);
+
 // The smallest count at which 95 % of the pixels are within the tolerance.
 [[nodiscard]] Vote tolerance_vote(const Study& study);
+
+// The last count before two palette colours come too close.
+[[nodiscard]] Vote look_alikes_vote(const Study& study);
 
 // All colours of the picture, where these are no more than the range allows.
 [[nodiscard]] Vote distinct_colours_vote(const Study& study);

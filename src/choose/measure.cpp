@@ -34,10 +34,15 @@ void measure_curve(Study& study, const ColourTable& table, const Sweep& sweep,
         const PaletteCost cost = measure_cost(table, labs);
         study.palettes[at] =
             make_palette(written, labs, cost.pixels, sweep.kept, written_space, srgb);
-        const double evidence = sweep.objective[at] / static_cast<double>(table.opaque_pixels);
-        study.curve[at] = {sweep.centres[at].count, evidence,      cost.mse,
-                           cost.mean_de00,          cost.p95_de00, cost.max_de00,
-                           closest_pair(labs)};
+        const double evidence = sweep.objective[at] / sweep.weight;
+        study.curve[at] = {sweep.centres[at].count,
+                           evidence,
+                           cost.mse,
+                           cost.mean_de00,
+                           cost.p95_de00,
+                           cost.max_de00,
+                           closest_pair(labs),
+                           sweep.least_weight[at] / sweep.weight};
     });
 }
 

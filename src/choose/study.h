@@ -7,6 +7,7 @@
 #include <string>
 #include <vector>
 
+#include "evidence/evidence_facts.h"
 #include "palette/palette.h"
 #include "picture/picture.h"
 
@@ -27,13 +28,6 @@ struct PictureFacts {
     std::optional<double> colour_cell_de;
 };
 
-// What the count is judged on. Unset: not measured.
-struct EvidenceFacts {
-    std::optional<std::string> kind;  // "flat art" or "continuous tone"
-    std::optional<double> flat_share;
-    std::optional<double> noise;  // dE76
-};
-
 // One row of the error curve. All but evidence_mse are over every opaque pixel, each against the
 // written palette colour nearest to it in CIELAB.
 struct CurvePoint {
@@ -44,6 +38,7 @@ struct CurvePoint {
     double p95_de00 = 0;  // the smallest difference that covers 95 % of the pixels
     double max_de00 = 0;
     std::optional<double> closest_pair_de00;  // between two palette colours; unset below 2 colours
+    double least_evidence_share = 1;  // the smallest part of the evidence that one colour is for
 };
 
 // What one criterion says of the count, with its reason in words and its figure.

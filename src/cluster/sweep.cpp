@@ -69,13 +69,23 @@ void reach_further(const WeightedPoints& points, const WeightedPoints& cells,
     if (options.extra_count > found.back().count) found.push_back(grown(options.extra_count));
 }
 
+// Polishes the centres that belong to place `at` of the sweep and notes what they come to.
+void polish(const WeightedPoints& points, Centres& centres, const LloydLimits& limits,
+            std::size_t at, Sweep& sweep) {
+    Partition partition(points, centres.count);
+    sweep.objective[at] = lloyd(points, centres, sweep.kept, limits, partition);
+    double least = points.total_weight;
+    for (int k = 0; k < centres.count; ++k) least = std::min(least, partition.weight(k));
+    sweep.least_weight[at] = least;
+}
+
 // A result that is worse than the count before it starts from that instead, with one centre more.
 void mend_rises(const WeightedPoints& points, Sweep& sweep) {
     for (std::size_t i = 1; i < sweep.centres.size(); ++i) {
         if (sweep.objective[i] <= sweep.objective[i - 1]) continue;
         Centres centres = sweep.centres[i - 1];
         grow(points, centres, sweep.kept, sweep.centres[i].count);
-        sweep.objective[i] = lloyd(points, centres, sweep.kept, polish_limits);
+        polish(points, centres, polish_limits, i, sweep);
         sweep.centres[i] = std::move(centres);
     }
 }
@@ -89,6 +99,7 @@ Sweep sweep_counts(const WeightedPoints& points, const SweepOptions& options) {
     };
     Sweep sweep;
     sweep.kept = options.kept.count;
+    sweep.weight = points.total_weight;
     const WeightedPoints cells = merge_into_cells(points, cell_edge);
     const std::size_t few_points = coarse_size(points);
     const bool few = points.n <= few_points;
@@ -98,6 +109,7 @@ Sweep sweep_counts(const WeightedPoints& points, const SweepOptions& options) {
     reach_further(points, cells, options, sweep.centres);
 
     sweep.objective.resize(sweep.centres.size());
+    sweep.least_weight.resize(sweep.centres.size());
     std::atomic<std::size_t> done{0};
     std::mutex reporting;
     // The largest counts take longest: they go first, so that the threads end together.
@@ -106,8 +118,7 @@ Sweep sweep_counts(const WeightedPoints& points, const SweepOptions& options) {
         Centres& centres = sweep.centres[at];
         const bool settle = merged && cells.n > 8 * static_cast<std::size_t>(centres.count);
         if (settle) lloyd(cells, centres, sweep.kept, settle_limits);
-        sweep.objective[at] =
-            lloyd(points, centres, sweep.kept, settle ? polish_settled : polish_limits);
+        polish(points, centres, settle ? polish_settled : polish_limits, at, sweep);
         const std::lock_guard<std::mutex> lock(reporting);
         report(0.4 + 0.6 * static_cast<double>(++done) / static_cast<double>(sweep.centres.size()));
     });

@@ -48,7 +48,7 @@ std::filesystem::path file_name(const std::string& option, const std::string& te
 // Values as they were typed: CLI11 sorts them, the functions above judge them.
 struct Typed {
     std::string picture;
-    std::optional<std::string> out, threads, count, at_least, at_most, tolerance, profile,
+    std::optional<std::string> out, threads, count, at_least, at_most, tolerance, evidence, profile,
         max_pixels;
     std::vector<std::string> keep;
     CommonOptions common;  // only its flags
@@ -80,6 +80,11 @@ void add_choosing_options(CLI::App& command, Typed& typed) {
         .add_option("--tolerance", typed.tolerance,
                     "CIEDE2000 difference that 95 % of the pixels should stay within; default: 3")
         ->option_text("DE00");
+    command
+        .add_option("--evidence", typed.evidence,
+                    "Which pixels the count is judged on: those of flat areas, where there are "
+                    "such (flat, the default), or all of them alike (all)")
+        ->option_text("WHICH");
     command
         .add_option("--keep", typed.keep,
                     "A colour that must be in the palette: #rrggbb, a CSS name or "
@@ -115,6 +120,12 @@ ChoosingOptions choosing_options(const Typed& typed) {
     }
     if (typed.tolerance) {
         options.tolerance = positive_number("--tolerance", *typed.tolerance, 100);
+    }
+    if (typed.evidence) {
+        if (*typed.evidence != "flat" && *typed.evidence != "all") {
+            refuse("--evidence " + *typed.evidence + ": give flat or all");
+        }
+        options.every_pixel_alike = *typed.evidence == "all";
     }
     for (const std::string& text : typed.keep) options.keep.push_back(parse_colour(text));
     const int most = options.count.value_or(options.at_most);

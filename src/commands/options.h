@@ -26,6 +26,7 @@ struct ChoosingOptions {
     int at_least = 2;
     int at_most = 24;
     double tolerance = 3;
+    bool every_pixel_alike = false;  // not only flat areas are evidence
     std::vector<ColourText> keep;
 };
 

@@ -8,8 +8,8 @@
 #include "cluster/sweep.h"
 #include "commands/progress_bar.h"
 #include "commands/summary.h"
+#include "evidence/evidence.h"
 #include "histogram/colour_table.h"
-#include "histogram/weighted_points.h"
 #include "label/label_map.h"
 #include "output/curve_csv.h"
 #include "output/curve_svg.h"
@@ -182,9 +182,15 @@ void run_reduce(const ReduceOptions& options, const Terminal& terminal) {
     study.at_least = options.choosing.at_least;
     study.at_most = options.choosing.at_most;
 
-    progress.stage("clustering", 0.4, 0.8);
+    progress.stage("weighing the evidence", 0.4, 0.5);
+    const Evidence evidence = options.choosing.every_pixel_alike
+                                  ? equal_evidence(table)
+                                  : weigh_evidence(picture, table, space);
+    study.evidence = evidence.facts;
+
+    progress.stage("clustering", 0.5, 0.8);
     const Sweep sweep = sweep_counts(
-        points_of(table),
+        evidence.points,
         sweep_options(options.choosing, kept_centres(options.choosing.keep, written), progress));
 
     progress.stage("measuring", 0.8, 0.9);

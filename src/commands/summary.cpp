@@ -139,8 +139,16 @@ std::string marks(const Study& study, int count) {
     const auto add = [&](const std::string& mark) { text += (text.empty() ? "" : ", ") + mark; };
     if (count == study.count && study.count_was_given) add("used");
     if (count == study.proposal.count) add("proposed");
+    std::vector<std::string> names;
     for (const Vote& vote : study.proposal.votes) {
-        if (vote.count == count) add(vote.criterion);
+        if (vote.count == count) names.push_back(vote.criterion);
+    }
+    constexpr std::size_t most_names = 2;  // more leave no room for the bar
+    if (names.size() > most_names) {
+        add(std::to_string(names.size()) + " votes of " +
+            std::to_string(study.proposal.votes.size()));
+    } else {
+        for (const std::string& name : names) add(name);
     }
     return text;
 }

@@ -88,6 +88,13 @@ void KeyCounter::add(std::uint64_t key, std::uint64_t count) {
     }
 }
 
+void KeyCounter::add(const KeyCounter& other) {
+    for (const ColourCount& place : other.places_) {
+        if (place.key != free_place) add(place.key, place.count);
+    }
+    highest_ += other.highest_;
+}
+
 void KeyCounter::grow() {
     std::vector<ColourCount> old(places_.size() * 2, ColourCount{free_place, 0});
     old.swap(places_);

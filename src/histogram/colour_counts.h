@@ -20,6 +20,7 @@ class KeyCounter {
   public:
     KeyCounter();
     void add(std::uint64_t key, std::uint64_t count);
+    void add(const KeyCounter& other);
     [[nodiscard]] std::size_t size() const noexcept { return size_ + (highest_ > 0 ? 1 : 0); }
     [[nodiscard]] std::vector<ColourCount> sorted() const;  // ascending by key
 

@@ -2,9 +2,9 @@
 
 #include <algorithm>
 #include <array>
-#include <bit>
 
 #include "cluster/nearest.h"
+#include "histogram/key_index.h"
 #include "histogram/lab_cells.h"
 #include "support/cancel.h"
 #include "support/parallel.h"
@@ -72,61 +72,22 @@ void label_by_place(const Picture& picture, const ColourTable& table,
     });
 }
 
-// Keys of a table to labels, by open addressing in a table at most half full.
-class LabelOfKey {
-  public:
-    LabelOfKey(const ColourTable& table, const std::vector<std::uint16_t>& label)
-        : bits_(static_cast<int>(std::bit_width(table.size() * 2))),
-          places_(std::size_t{1} << bits_, Place{free_place, 0}) {
-        for (std::size_t i = 0; i < table.size(); ++i) {
-            const auto its_label = static_cast<std::uint8_t>(label[i]);
-            if (table.key[i] == free_place) {
-                highest_ = its_label;
-                continue;
-            }
-            std::size_t at = start(table.key[i]);
-            while (places_[at].key != free_place) at = next(at);
-            places_[at] = {table.key[i], its_label};
-        }
-    }
-
-    // 0 for a key that is not in the table: only pixels that are not opaque have one.
-    [[nodiscard]] std::uint8_t operator[](std::uint64_t key) const {
-        if (key == free_place) return highest_;
-        for (std::size_t at = start(key);; at = next(at)) {
-            if (places_[at].key == key) return places_[at].label;
-            if (places_[at].key == free_place) return 0;
-        }
-    }
-
-  private:
-    static constexpr std::uint64_t free_place = ~std::uint64_t{0};
-    struct Place {
-        std::uint64_t key;
-        std::uint8_t label;
-    };
-    [[nodiscard]] std::size_t start(std::uint64_t key) const {
-        return key * 0x9E3779B97F4A7C15U >> (64 - bits_);
-    }
-    [[nodiscard]] std::size_t next(std::size_t at) const { return (at + 1) & (places_.size() - 1); }
-
-    int bits_;
-    std::vector<Place> places_;
-    std::uint8_t highest_ = 0;  // label of the highest key, which has no place
-};
-
 template <typename Sample>
-void label_by_key(const Picture& picture, const Sample* samples, const LabelOfKey& label_of,
-                  std::uint8_t* out) {
+void label_by_key(const Picture& picture, const Sample* samples, const KeyIndex& index,
+                  const std::vector<std::uint16_t>& label, std::uint8_t* out) {
     const int channels = channel_count(picture.model);
+    const auto label_of = [&](std::uint64_t key) {
+        const std::uint32_t at = index.find(key);
+        return at == KeyIndex::missing ? std::uint8_t{0} : static_cast<std::uint8_t>(label[at]);
+    };
     for_each_stripe(picture.pixel_count(), [&](std::size_t begin, std::size_t end) {
         std::uint64_t last_key = 0;
-        std::uint8_t last = label_of[last_key];
+        std::uint8_t last = label_of(last_key);
         for (std::size_t i = begin; i < end; ++i) {
             const std::uint64_t key =
                 colour_key(samples + i * static_cast<std::size_t>(channels), channels);
             if (key != last_key) {
-                last = label_of[key];
+                last = label_of(key);
                 last_key = key;
             }
             out[i] = last;
@@ -166,10 +127,9 @@ Samples<std::uint8_t> label_pixels(const Picture& picture, const ColourTable& ta
             picture.pixel_count() >= direct_from_pixels) {
             label_by_place(picture, table, label, labels.data());
         } else if (picture.bits == 8) {
-            label_by_key(picture, picture.samples8.data(), LabelOfKey(table, label), labels.data());
+            label_by_key(picture, picture.samples8.data(), KeyIndex(table), label, labels.data());
         } else {
-            label_by_key(picture, picture.samples16.data(), LabelOfKey(table, label),
-                         labels.data());
+            label_by_key(picture, picture.samples16.data(), KeyIndex(table), label, labels.data());
         }
     }
     if (!picture.opaque.empty()) {

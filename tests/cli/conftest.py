@@ -17,6 +17,7 @@ class Case:
 
     def __init__(self, folder, pixels, *options, **png):
         self.pixels = pixels
+        self.options = options
         self.picture = pictures.save_png(folder / "picture.png", pixels, **png)
         self.folder = running.reduce(self.picture, *options, cwd=folder)
         self.study = running.study_of(self.folder)
@@ -44,7 +45,7 @@ def deep(tmp_path_factory):
 
 @pytest.fixture(scope="session")
 def grey(tmp_path_factory):
-    return Case(tmp_path_factory.mktemp("grey"), pictures.grey())
+    return Case(tmp_path_factory.mktemp("grey"), pictures.grey(), "--evidence", "all")
 
 
 @pytest.fixture(scope="session")

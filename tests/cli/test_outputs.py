@@ -212,7 +212,7 @@ def test_another_place_hour_and_user_give_the_same_bytes(poster, tmp_path):
 @pytest.mark.parametrize("name", ["poster", "noisy", "deep"])
 def test_threads_do_not_change_a_byte(request, tmp_path, name, threads):
     case = request.getfixturevalue(name)
-    folder = reduce(case.picture, "--threads", str(threads), cwd=tmp_path)
+    folder = reduce(case.picture, *case.options, "--threads", str(threads), cwd=tmp_path)
     assert contents(folder) == contents(case.folder)
 
 
@@ -226,7 +226,7 @@ def test_threads_do_not_change_a_byte_of_a_picture_large_enough_to_be_cut_up(tmp
 def test_other_variants_of_the_c_library_s_functions_give_the_same_bytes(case, tmp_path):
     """glibc's pow, exp, sin and atan2 differ in their last bits without fused multiply-add."""
     env = environment(GLIBC_TUNABLES="glibc.cpu.hwcaps=-AVX2,-FMA,-FMA4,-AVX512F,-AVX")
-    assert contents(reduce(case.picture, cwd=tmp_path, env=env)) == contents(case.folder)
+    assert contents(reduce(case.picture, *case.options, cwd=tmp_path, env=env)) == contents(case.folder)
 
 
 @pytest.mark.skipif(sanitized(), reason="the emulator has no room for AddressSanitizer's memory")

@@ -2,6 +2,7 @@
 
 #include <gtest/gtest.h>
 
+#include <array>
 #include <cmath>
 
 #include "choose/criteria.h"
@@ -146,8 +147,76 @@ TEST(DistinctColours, SpeakWhereTheRangeHoldsThem) {
     EXPECT_FALSE(distinct_colours_vote(study).count);
 }
 
+// Flat art in which `inks` stand out, the curve bends at `knee`, and beyond `look_alikes` two
+// colours come close.
+Study flat_art(int inks, int knee, int look_alikes, double noise = 0) {
+    Study study = bent_study(knee, 99);
+    study.evidence = {"flat art", 0.9, noise, inks};
+    for (CurvePoint& point : study.curve) {
+        point.closest_pair_de00 = point.count > look_alikes ? 4.9 : 5.0;
+    }
+    return study;
+}
+
+TEST(Proposal, OfFlatArtIsTheMiddleOfThree) {
+    Proposal proposal = propose(flat_art(5, 5, 5));
+    EXPECT_EQ(proposal.count, 5);
+    EXPECT_EQ(proposal.low, 5);
+    EXPECT_EQ(proposal.high, 5);
+    EXPECT_EQ(proposal.confidence, 0.95);
+    EXPECT_EQ(propose(flat_art(5, 5, 5, 2)).confidence, 0.8);
+    for (const auto& [inks, knee, look_alikes] :
+         {std::array{4, 6, 6}, std::array{6, 4, 6}, std::array{6, 6, 4}}) {
+        proposal = propose(flat_art(inks, knee, look_alikes));
+        EXPECT_EQ(proposal.count, 6);
+        EXPECT_EQ(proposal.low, 4);
+        EXPECT_EQ(proposal.high, 6);
+        EXPECT_EQ(proposal.confidence, 0.3);
+        EXPECT_NE(proposal.sentence.find("disagrees"), std::string::npos) << proposal.sentence;
+        expect_sound(flat_art(inks, knee, look_alikes), proposal);
+    }
+    proposal = propose(flat_art(3, 6, 5));
+    EXPECT_EQ(proposal.count, 5);
+    EXPECT_EQ(proposal.low, 3);
+    EXPECT_EQ(proposal.high, 6);
+    EXPECT_EQ(proposal.confidence, 0.15);
+    // Few different colours may be blends: what stands out goes before them.
+    Study study = flat_art(5, 5, 5);
+    study.picture.distinct_colours = 9;
+    EXPECT_EQ(propose(study).count, 5);
+}
+
+TEST(Inks, AbstainWhereTheyWereNotFoundInFlatArt) {
+    Study study = flat_art(5, 6, 7);
+    EXPECT_EQ(inks_vote(study).count, 5);
+    EXPECT_NE(inks_vote(study).reason.find("90 %"), std::string::npos);
+    study.evidence.kind = "continuous tone";
+    EXPECT_FALSE(inks_vote(study).count);
+    study.evidence = {"flat art", 0.9, 0.0, 0};
+    EXPECT_FALSE(inks_vote(study).count);
+    EXPECT_FALSE(inks_vote(Study{}).count);
+}
+
+TEST(LookAlikes, EndWhereTwoComeCloseOrOneStandsForNothing) {
+    Study study = flat_art(5, 6, 7);
+    EXPECT_EQ(look_alikes_vote(study).count, 7);
+    study.curve[3].least_evidence_share = 0.0003;
+    EXPECT_EQ(look_alikes_vote(study).count, 7);
+    study.curve[3].least_evidence_share = 0.00029;
+    EXPECT_EQ(look_alikes_vote(study).count, 3);
+    EXPECT_FALSE(look_alikes_vote(flat_art(5, 6, 30)).count);
+    EXPECT_FALSE(look_alikes_vote(Study{}).count);
+}
+
+TEST(SecondDifference, IsTheSharpestBend) {
+    EXPECT_EQ(second_difference_vote(bent_study(4, 99)).count, 4);
+    EXPECT_FALSE(second_difference_vote(study_of({5, 1}, {9, 8})).count);
+    EXPECT_FALSE(second_difference_vote(study_of({5, 5, 5, 5}, {9, 9, 9, 9})).count);
+    EXPECT_FALSE(second_difference_vote(Study{}).count);
+}
+
 TEST(Proposal, FollowsItsRule) {
-    // 1. No more colours than the range allows.
+    // 2. No more colours than the range allows.
     Study study = bent_study(4, 3, 7);
     study.picture.distinct_colours = 7;
     Proposal proposal = propose(study);
@@ -156,20 +225,21 @@ TEST(Proposal, FollowsItsRule) {
     EXPECT_EQ(proposal.high, 7);
     EXPECT_EQ(proposal.confidence, 0.9);
     expect_sound(study, proposal);
-    // 2. Knee and tolerance agree, or nearly.
+    // 3. No count is natural. Knee and tolerance agree, or nearly.
     for (const int met : {3, 4, 5}) {
         proposal = propose(bent_study(4, met));
         EXPECT_EQ(proposal.count, met);
         EXPECT_EQ(proposal.low, std::min(met, 4));
         EXPECT_EQ(proposal.high, std::max(met, 4));
-        EXPECT_EQ(proposal.confidence, 0.6);
+        EXPECT_EQ(proposal.confidence, 0.5);
     }
-    // 3. They do not.
+    // They do not.
     proposal = propose(bent_study(4, 11));
     EXPECT_EQ(proposal.count, 4);
     EXPECT_EQ(proposal.low, 4);
     EXPECT_EQ(proposal.high, 11);
-    EXPECT_EQ(proposal.confidence, 0.4);
+    EXPECT_EQ(proposal.confidence, 0.3);
+    EXPECT_NE(proposal.sentence.find("no count is natural"), std::string::npos);
     EXPECT_NE(proposal.sentence.find("only at 11"), std::string::npos) << proposal.sentence;
     proposal = propose(bent_study(6, 2));
     EXPECT_EQ(proposal.count, 6);

@@ -69,7 +69,7 @@ Study study_of(const std::string& file, const std::vector<int>& counts,
                const std::function<double(int)>& mse, const std::function<double(int)>& evidence) {
     Study study;
     study.picture = {file, 1200, 900, 3, 8, "sRGB", Resolution{300, 300}, 1'080'000, 214'311, {}};
-    study.evidence = {"flat art", 0.71, 0.4};
+    study.evidence = {"flat art", 0.71, 0.4, std::nullopt};
     std::mt19937 random(7);
     for (const int count : counts) {
         const double root = std::sqrt(mse(count));
@@ -123,7 +123,7 @@ Study photograph() {
     const auto mse = [](int k) { return 1400.0 / std::pow(k, 1.12); };
     Study study = study_of("dunes at low tide.jpg", up_to(25), mse,
                            [&](int k) { return mse(k) * (1 - 0.004 * (k % 3)); });
-    study.evidence = {"continuous tone", 0.08, 1.7};
+    study.evidence = {"continuous tone", 0.08, 1.7, std::nullopt};
     propose(study, 9, 7, 12, 8, std::nullopt);
     return study;
 }

@@ -1,0 +1,24 @@
+#pragma once
+
+#include <vector>
+
+#include "histogram/weighted_points.h"
+
+namespace tincture {
+
+// A place in CIELAB where the colours of flat areas gather.
+struct Peak {
+    double L = 0, a = 0, b = 0;
+    double weight = 0;  // within the radius
+    // The part of the weight within twice the radius that lies within the radius: near 1 for an
+    // ink, near a half or less where colours go on evenly, as along a fade.
+    double prominence = 0;
+};
+
+// Places from the heaviest point on, each `radius` (dE76) wide and none within the radius of
+// another, that weigh at least `least`; at most `most`, from twice as many tries. Points of three
+// dimensions.
+[[nodiscard]] std::vector<Peak> find_peaks(const WeightedPoints& points, double radius,
+                                           double least, std::size_t most);
+
+}  // namespace tincture
