@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 #include <cstddef>
+#include <cstdlib>
 
 #include "evidence/smooth.h"
 #include "support/cancel.h"
@@ -45,6 +46,7 @@ void round_colours(LabBand& band) {
 void count_near(const LabBand& band, std::size_t centre, std::size_t other, std::ptrdiff_t shift,
                 std::int32_t reach_squared, std::vector<std::int16_t>& near) {
     const std::size_t width = band.width;
+    if (static_cast<std::size_t>(std::abs(shift)) >= width) return;
     const auto first = static_cast<std::size_t>(std::max<std::ptrdiff_t>(0, -shift));
     const std::size_t last = width - static_cast<std::size_t>(std::max<std::ptrdiff_t>(0, shift));
     const auto difference = [](std::int16_t one, std::int16_t two) {

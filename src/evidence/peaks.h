@@ -15,8 +15,9 @@ struct Peak {
     double prominence = 0;
 };
 
-// Places from the heaviest point on, each `radius` (dE76) wide and none within the radius of
-// another, that weigh at least `least`; at most `most`, from twice as many tries. Points of three
+// Places from the heaviest point on, each of what lies within `radius` (dE76) of it and in no
+// earlier one (two can lie nearer to each other where the first took the points between them),
+// that weigh at least `least`; at most `most`, from twice as many tries. Points of three
 // dimensions.
 [[nodiscard]] std::vector<Peak> find_peaks(const WeightedPoints& points, double radius,
                                            double least, std::size_t most);

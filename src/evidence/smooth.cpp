@@ -4,6 +4,7 @@
 #include <array>
 #include <cmath>
 #include <cstddef>
+#include <cstdlib>
 
 namespace tincture {
 namespace {
@@ -35,6 +36,7 @@ Row row_of(const LabBand& band, std::size_t row) {
 // Written so that the compiler takes several pixels at a time.
 void add_neighbours(const Row& centre, const Row& other, std::ptrdiff_t shift, std::size_t width,
                     std::int32_t reach_squared, RowSums& sums) {
+    if (static_cast<std::size_t>(std::abs(shift)) >= width) return;
     const auto first = static_cast<std::size_t>(std::max<std::ptrdiff_t>(0, -shift));
     const std::size_t last = width - static_cast<std::size_t>(std::max<std::ptrdiff_t>(0, shift));
     std::int32_t* sum_L = sums.L.data();

@@ -89,6 +89,9 @@ void KeyCounter::add(std::uint64_t key, std::uint64_t count) {
 }
 
 void KeyCounter::add(const KeyCounter& other) {
+    // Places are in the order of their hash: put into a smaller table, they would all crowd at its
+    // beginning.
+    while (places_.size() < other.places_.size()) grow();
     for (const ColourCount& place : other.places_) {
         if (place.key != free_place) add(place.key, place.count);
     }

@@ -237,5 +237,31 @@ TEST(KeyCounter, CountsAnyKey) {
     }
 }
 
+TEST(KeyCounter, TakesInAnother) {
+    for (const auto& [mine, others] :
+         std::vector<std::pair<int, int>>{{0, 9000}, {9000, 0}, {100, 30'000}, {30'000, 100}}) {
+        Random random(17);
+        Counts wanted;
+        KeyCounter one;
+        KeyCounter two;
+        const auto fill = [&](KeyCounter& counter, int keys) {
+            for (int i = 0; i < keys; ++i) {
+                const std::uint64_t key = random.below(40'000) * 0x1'0000'0001U;
+                counter.add(key, 3);
+                wanted[key] += 3;
+            }
+            counter.add(~std::uint64_t{0}, 2);
+            wanted[~std::uint64_t{0}] += 2;
+        };
+        fill(one, mine);
+        fill(two, others);
+        one.add(two);
+        EXPECT_EQ(one.size(), wanted.size());
+        Counts found;
+        for (const ColourCount& colour : one.sorted()) found[colour.key] += colour.count;
+        EXPECT_EQ(found, wanted);
+    }
+}
+
 }  // namespace
 }  // namespace tincture
