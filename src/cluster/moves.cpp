@@ -11,7 +11,7 @@ namespace {
 
 // Found by trial on photograph-like pictures, as the figures of the search.
 constexpr LloydLimits glance = {4, 1e-3};
-constexpr std::size_t choices = 8;  // centres to go, clusters to split
+constexpr std::size_t choices = 6;  // centres to go, clusters to split
 
 struct ClusterSplit {
     int cluster;

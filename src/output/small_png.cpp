@@ -90,14 +90,12 @@ class ColourIndex {
             return true;
         }
         row_above_.assign(row.begin(), row.end());
-        for (std::size_t x = 0; x < row.size(); ++x) {
-            if (x > 0 && row[x] == row[x - 1]) {
-                indices[x] = indices[x - 1];
-                continue;
-            }
+        for (std::size_t x = 0; x < row.size();) {
             const std::optional<std::uint8_t> index = index_of(row[x]);
             if (!index) return false;
-            indices[x] = *index;
+            const std::size_t start = x;
+            while (x < row.size() && row[x] == row[start]) ++x;
+            std::memset(indices + start, *index, x - start);
         }
         return true;
     }

@@ -215,6 +215,7 @@ void paint(Band& band, TextPainter& painter, const SheetText& shape) {
                 const auto at = static_cast<std::size_t>(row) * image.width + column;
                 // 16 steps suffice for the eye and leave room for the swatches in a palette of 256.
                 const int step = (image.coverage[at] + 8) / 17;
+                if (step == 0) continue;
                 band.blend(glyph.x + column, glyph.y + row, shape.colour,
                            static_cast<std::uint8_t>(17 * step));
             }
