@@ -14,7 +14,7 @@ namespace {
 // starts.
 constexpr LloydLimits settled = {20, 1e-3};
 constexpr int exchange_rounds = 4;
-constexpr std::size_t exchange_trials = 4;  // pairs of moves that settle
+constexpr std::size_t exchange_trials = 6;  // pairs of moves that settle
 constexpr double exchange_estimate = 0.02;  // of the objective: pairs that look worse do not
 constexpr int exchange_up_to = 40;          // colours: with more, none matters much
 constexpr double worth_a_look = 1.005;      // times the objective: where exchanges may yet help

@@ -7,9 +7,12 @@
 #include "evidence/flat_areas.h"
 #include "evidence/inks.h"
 #include "evidence/noise.h"
+#include "evidence/peak_places.h"
 #include "evidence/peaks.h"
+#include "evidence/softness.h"
 #include "histogram/cells.h"
 #include "histogram/pixel_lab.h"
+#include "support/maths.h"
 
 namespace tincture {
 namespace {
@@ -28,7 +31,7 @@ constexpr double peak_de = 5;
 constexpr double peak_noise = 0.9;
 constexpr double clean_noise = 0.4;
 constexpr double least_peak_share = 0.0001;
-constexpr std::size_t most_peaks = 64;
+constexpr std::size_t most_peaks = PeakPlaces::most_peaks;
 constexpr double an_ink = 0.25;  // of full weight
 
 constexpr double enough_pixels = 2e6;
@@ -36,12 +39,6 @@ constexpr double enough_pixels = 2e6;
 std::uint32_t stride_for(const Picture& picture) {
     const double stride = std::sqrt(static_cast<double>(picture.pixel_count()) / enough_pixels);
     return std::max(1U, static_cast<std::uint32_t>(std::ceil(stride)));
-}
-
-// 0 below `low`, 1 above `high`, smooth between.
-double smooth_step(double value, double low, double high) {
-    const double t = std::clamp((value - low) / (high - low), 0.0, 1.0);
-    return t * t * (3 - 2 * t);
 }
 
 // How much a picture is flat art, from the share of its pixels that lie flat in inks.
@@ -66,21 +63,13 @@ WeightedPoints points_from(const std::vector<ColourCount>& colours) {
 }
 
 // The weight of each flat colour: that of the peak it belongs to, none where it belongs to none.
-std::vector<double> colour_weights(const WeightedPoints& flat, const std::vector<Peak>& peaks,
+std::vector<double> colour_weights(const std::vector<ColourCount>& flat,
+                                   const std::vector<Peak>& peaks,
                                    const std::vector<double>& of_peak, double radius) {
-    std::vector<double> weights(flat.n, 0.0);
-    for (std::size_t i = 0; i < flat.n; ++i) {
-        double nearest = 2.25 * radius * radius;
-        for (std::size_t p = 0; p < peaks.size(); ++p) {
-            const Peak& peak = peaks[p];
-            const double L = static_cast<double>(flat.plane(0)[i]) - peak.L;
-            const double a = static_cast<double>(flat.plane(1)[i]) - peak.a;
-            const double b = static_cast<double>(flat.plane(2)[i]) - peak.b;
-            const double squared = L * L + a * a + b * b;
-            if (squared > nearest) continue;
-            nearest = squared;
-            weights[i] = of_peak[p];
-        }
+    std::vector<double> weights(flat.size(), 0.0);
+    for (std::size_t i = 0; i < flat.size(); ++i) {
+        const std::size_t peak = nearest_peak(peaks, lab_of_key(flat[i].key), 1.5 * radius);
+        if (peak < peaks.size()) weights[i] = of_peak[peak];
     }
     return weights;
 }
@@ -195,8 +184,10 @@ Evidence weigh_evidence(const Picture& picture, const ColourTable& table,
     const auto all = static_cast<double>(table.opaque_pixels) / (stride * stride);
     const std::vector<Peak> peaks =
         find_peaks(cells, radius, std::max(4.0, least_peak_share * all), most_peaks);
-    const std::vector<double> inks = ink_weights(peaks, all, radius);
-    std::vector<double> weights = colour_weights(flat, peaks, inks, radius);
+    const PeakPlaces places(colours.map, peaks, radius);
+    const double softness = measure_softness(pixels, places, peaks, all);
+    const std::vector<double> inks = ink_weights(peaks, places, softness, all, radius);
+    std::vector<double> weights = colour_weights(colours.colours, peaks, inks, radius);
     double in_peaks = 0;
     for (std::size_t i = 0; i < flat.n; ++i) in_peaks += flat.weight[i] * weights[i];
     const double flat_share = in_peaks / all;

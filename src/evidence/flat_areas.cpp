@@ -30,12 +30,15 @@ void smooth(LabBand& band, double noise_de) {
     smooth_band(smoothed, second_reach * noise_de, band);
 }
 
-// To half a Lab unit.
+constexpr int grain = lab_band_steps / 2;  // half a Lab unit
+
+int in_grains(std::int16_t value) {
+    return (value + (value < 0 ? -grain / 2 : grain / 2)) / grain;
+}
+
 void round_colours(LabBand& band) {
-    constexpr int grain = lab_band_steps / 2;
     const auto rounded = [](std::int16_t value) {
-        return static_cast<std::int16_t>((value + (value < 0 ? -grain / 2 : grain / 2)) / grain *
-                                         grain);
+        return static_cast<std::int16_t>(in_grains(value) * grain);
     };
     std::transform(band.L.begin(), band.L.end(), band.L.begin(), rounded);
     std::transform(band.a.begin(), band.a.end(), band.a.begin(), rounded);
@@ -63,9 +66,10 @@ void count_near(const LabBand& band, std::size_t centre, std::size_t other, std:
     }
 }
 
-// Counts the flat colours of a row; `counter` takes runs of equal neighbours at once.
+// Counts the flat colours of a row, and notes them in a row of the map; `counter` takes runs of
+// equal neighbours at once.
 void count_row(const LabBand& band, std::size_t row, std::int32_t reach_squared,
-               std::vector<std::int16_t>& near, KeyCounter& counter) {
+               std::vector<std::int16_t>& near, KeyCounter& counter, std::uint32_t* map) {
     std::fill(near.begin(), near.end(), 0);
     for (std::ptrdiff_t dy = -1; dy <= 1; ++dy) {
         const std::ptrdiff_t other = static_cast<std::ptrdiff_t>(row) + dy;
@@ -81,6 +85,7 @@ void count_row(const LabBand& band, std::size_t row, std::int32_t reach_squared,
         const std::size_t at = row * band.width + x;
         if (near[x] < needed || band.L[at] == no_lab) continue;
         const std::uint64_t key = lab_key(band.L[at], band.a[at], band.b[at]);
+        map[x] = FlatMap::pack({band.L[at], band.a[at], band.b[at]});
         if (key != last && run > 0) {
             counter.add(last, run);
             run = 0;
@@ -107,6 +112,22 @@ LabSteps lab_of_key(std::uint64_t key) {
     return {part(32), part(16), part(0)};
 }
 
+// Each coordinate in grains from -512 on, in ten bits; never 0, as no L is so dark.
+std::uint32_t FlatMap::pack(const LabSteps& lab) {
+    const auto part = [](std::int16_t value) {
+        return static_cast<std::uint32_t>(in_grains(value) + 512);
+    };
+    return part(lab.L) << 20 | part(lab.a) << 10 | part(lab.b);
+}
+
+LabSteps FlatMap::lab_of(std::uint32_t colour) {
+    const auto part = [colour](int shift) {
+        const auto grains = static_cast<int>(colour >> shift & 1023) - 512;
+        return static_cast<std::int16_t>(grains * grain);
+    };
+    return {part(20), part(10), part(0)};
+}
+
 FlatColours count_flat_colours(const PixelLab& pixels, double noise_de, bool few) {
     const bool noisy = noise_de >= noise_worth_smoothing;
     const bool exact = few && !noisy;
@@ -115,6 +136,8 @@ FlatColours count_flat_colours(const PixelLab& pixels, double noise_de, bool few
     const double reach = std::max(near_de, near_noise * noise_de) * lab_band_steps;
     const auto reach_squared = static_cast<std::int32_t>(std::lround(reach * reach));
     std::vector<KeyCounter> found(bands);
+    FlatMap map{pixels.width(), pixels.height(), {}};
+    map.colour.assign(std::size_t{map.width} * map.height, FlatMap::not_flat);
     parallel_for(bands, [&](std::size_t b) {
         throw_if_cancelled();
         const std::uint32_t first = static_cast<std::uint32_t>(b) * band_rows;
@@ -127,12 +150,13 @@ FlatColours count_flat_colours(const PixelLab& pixels, double noise_de, bool few
         if (!exact) round_colours(band);
         std::vector<std::int16_t> near(pixels.width());
         for (std::uint32_t y = first; y < last; ++y) {
-            count_row(band, y - top, reach_squared, near, found[b]);
+            count_row(band, y - top, reach_squared, near, found[b],
+                      map.colour.data() + std::size_t{y} * map.width);
         }
     });
     KeyCounter all;
     for (const KeyCounter& counter : found) all.add(counter);
-    return {all.sorted(), exact};
+    return {all.sorted(), exact, std::move(map)};
 }
 
 }  // namespace tincture

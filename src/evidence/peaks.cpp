@@ -70,4 +70,19 @@ std::vector<Peak> find_peaks(const WeightedPoints& points, double radius, double
     return peaks;
 }
 
+std::size_t nearest_peak(const std::vector<Peak>& peaks, const LabSteps& colour, double reach) {
+    std::size_t best = peaks.size();
+    double nearest = reach * reach;
+    for (std::size_t p = 0; p < peaks.size(); ++p) {
+        const double L = static_cast<double>(colour.L) / lab_band_steps - peaks[p].L;
+        const double a = static_cast<double>(colour.a) / lab_band_steps - peaks[p].a;
+        const double b = static_cast<double>(colour.b) / lab_band_steps - peaks[p].b;
+        const double squared = L * L + a * a + b * b;
+        if (squared > nearest) continue;
+        nearest = squared;
+        best = p;
+    }
+    return best;
+}
+
 }  // namespace tincture

@@ -2,6 +2,7 @@
 
 #include <vector>
 
+#include "histogram/pixel_lab.h"
 #include "histogram/weighted_points.h"
 
 namespace tincture {
@@ -21,5 +22,10 @@ struct Peak {
 // dimensions.
 [[nodiscard]] std::vector<Peak> find_peaks(const WeightedPoints& points, double radius,
                                            double least, std::size_t most);
+
+// The place in `peaks` of the one nearest to a colour in the steps of a LabBand, peaks.size() where
+// none is within `reach` (dE76).
+[[nodiscard]] std::size_t nearest_peak(const std::vector<Peak>& peaks, const LabSteps& colour,
+                                       double reach);
 
 }  // namespace tincture

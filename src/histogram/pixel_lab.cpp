@@ -69,7 +69,7 @@ void PixelLab::read_row(std::uint32_t y, std::size_t at, LabBand& band) const {
     const auto read_samples = [&](const auto* samples) {
         const int channels = channel_count(picture_.model);
         std::uint64_t last_key = ~std::uint64_t{0};
-        Steps last = lab_of(last_key);
+        LabSteps last = lab_of(last_key);
         for (std::size_t x = 0; x < n; ++x) {
             const std::uint64_t key = colour_key(
                 samples + (start + x * stride_) * static_cast<std::size_t>(channels), channels);
@@ -89,9 +89,9 @@ void PixelLab::read_row(std::uint32_t y, std::size_t at, LabBand& band) const {
     }
 }
 
-PixelLab::Steps PixelLab::lab_of(std::uint64_t key) const {
+LabSteps PixelLab::lab_of(std::uint64_t key) const {
     const std::uint32_t at = index_->find(key);
-    return at == KeyIndex::missing ? Steps{} : lab_[at];
+    return at == KeyIndex::missing ? LabSteps{} : lab_[at];
 }
 
 }  // namespace tincture

@@ -26,6 +26,11 @@ inline constexpr std::int16_t no_lab = -lab_band_most * lab_band_steps;
 // A Lab coordinate in these steps, kept within lab_band_most.
 [[nodiscard]] std::int16_t lab_step(float value);
 
+// A colour in these steps.
+struct LabSteps {
+    std::int16_t L = 0, a = 0, b = 0;
+};
+
 // Some whole rows of a picture, planar: L[(y - first_row) * width + x], in steps of
 // 1 / lab_band_steps.
 struct LabBand {
@@ -50,17 +55,14 @@ class PixelLab {
     void read(std::uint32_t first, std::uint32_t rows, LabBand& band) const;
 
   private:
-    struct Steps {
-        std::int16_t L = 0, a = 0, b = 0;
-    };
-    [[nodiscard]] Steps lab_of(std::uint64_t key) const;
+    [[nodiscard]] LabSteps lab_of(std::uint64_t key) const;
     void read_row(std::uint32_t y, std::size_t at, LabBand& band) const;
 
     const Picture& picture_;
     const ColourSpace& space_;
     std::uint32_t stride_;
     std::optional<KeyIndex> index_;  // unset where the table lists no keys
-    std::vector<Steps> lab_;         // of each colour of the table
+    std::vector<LabSteps> lab_;      // of each colour of the table
 };
 
 }  // namespace tincture

@@ -1,5 +1,6 @@
 #include "support/maths.h"
 
+#include <algorithm>
 #include <cmath>
 
 namespace tincture {
@@ -17,6 +18,11 @@ double natural_log(double x) {
     double sum = 0;
     for (int k = 10; k >= 0; --k) sum = 1.0 / (2 * k + 1) + t2 * sum;
     return 2 * t * sum + exponent * 0.693147180559945309;
+}
+
+double smooth_step(double value, double low, double high) {
+    const double t = std::clamp((value - low) / (high - low), 0.0, 1.0);
+    return t * t * (3 - 2 * t);
 }
 
 }  // namespace tincture

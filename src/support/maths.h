@@ -9,4 +9,7 @@ namespace tincture {
 [[nodiscard]] double natural_log(double x);
 inline constexpr double natural_log_error = 1e-15;
 
+// 0 up to `low`, 1 from `high` on, and a cubic between that is smooth at both; low < high.
+[[nodiscard]] double smooth_step(double value, double low, double high);
+
 }  // namespace tincture
