@@ -17,14 +17,17 @@ std::optional<int> count_of(const std::vector<Vote>& votes, std::string_view cri
     return std::nullopt;
 }
 
-constexpr double clean_noise = 0.4;  // dE76: less is not noticed
-
 // A count, another that the range reaches to, and how sure that is.
 void set(Proposal& proposal, int count, int other, double confidence) {
     proposal.count = count;
     proposal.low = std::min(count, other);
     proposal.high = std::max(count, other);
     proposal.confidence = confidence;
+}
+
+std::string in_doubt(int more) {
+    return more == 1 ? "one more stands out, but looks like a blend"
+                     : std::to_string(more) + " more stand out, but look like blends";
 }
 
 // Flat art: what stands out, the bend of the curve and look-alikes read the same evidence in
@@ -37,13 +40,14 @@ std::string decide_flat_art(Proposal& proposal, const Study& study, int inks) {
     const bool all_agree = counts[0] == counts[2];
     const bool two_agree = counts[0] == counts[1] || counts[1] == counts[2];
     proposal.count = counts[1];
+    const int more = study.evidence.perhaps_more_inks;
     proposal.low = counts[0];
-    proposal.high = counts[2];
-    // Shares that were right among drawn posters (tests/corpus).
-    const bool clean = study.evidence.noise.value_or(0) < clean_noise;
-    proposal.confidence = all_agree ? (clean ? 0.95 : 0.8) : two_agree ? 0.3 : 0.15;
+    proposal.high = counts[2] + more;
+    // About the shares that were right among drawn pictures (tests/corpus).
+    proposal.confidence = all_agree ? (more == 0 ? 0.9 : 0.7) : two_agree ? 0.5 : 0.2;
     if (all_agree) {
-        return "so many stand out in flat areas, and the error curve and look-alikes say the same";
+        return "so many stand out in flat areas, and the error curve and look-alikes say the same" +
+               (more == 0 ? "" : "; " + in_doubt(more));
     }
     return "the evidence disagrees: " + std::to_string(inks) + (inks == 1 ? " stands" : " stand") +
            " out in flat areas, the error curve bends at " + std::to_string(knee) +

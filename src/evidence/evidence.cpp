@@ -173,7 +173,7 @@ Evidence weigh_evidence(const Picture& picture, const ColourTable& table,
     const double noise = measure_noise(pixels);
     if (nothing_gathers(table, noise)) {
         evidence.points = points_of(table);
-        evidence.facts = {"continuous tone", 0.0, noise, 0};
+        evidence.facts = {"continuous tone", 0.0, noise, 0, 0};
         return evidence;
     }
     const FlatColours colours = count_flat_colours(pixels, noise, table.size() <= few_colours);
@@ -186,7 +186,8 @@ Evidence weigh_evidence(const Picture& picture, const ColourTable& table,
         find_peaks(cells, radius, std::max(4.0, least_peak_share * all), most_peaks);
     const PeakPlaces places(colours.map, peaks, radius);
     const double softness = measure_softness(pixels, places, peaks, all);
-    const std::vector<double> inks = ink_weights(peaks, places, softness, all, radius);
+    const InkWeights found = ink_weights(peaks, places, softness, all, radius);
+    const std::vector<double>& inks = found.weight;
     std::vector<double> weights = colour_weights(colours.colours, peaks, inks, radius);
     double in_peaks = 0;
     for (std::size_t i = 0; i < flat.n; ++i) in_peaks += flat.weight[i] * weights[i];
@@ -198,6 +199,7 @@ Evidence weigh_evidence(const Picture& picture, const ColourTable& table,
     evidence.facts.noise = noise;
     evidence.facts.inks = static_cast<int>(
         std::count_if(inks.begin(), inks.end(), [](double weight) { return weight >= an_ink; }));
+    evidence.facts.perhaps_more_inks = found.perhaps_more;
     if (std::round(art * whole) < 1) {
         evidence.points = points_of(table);
         return evidence;

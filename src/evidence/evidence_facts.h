@@ -11,6 +11,7 @@ struct EvidenceFacts {
     std::optional<double> flat_share;  // part of the opaque pixels that lie flat in an ink
     std::optional<double> noise;       // dE76, root mean square
     std::optional<int> inks;           // colours that stand out in flat areas
+    int perhaps_more_inks = 0;         // that stand out as well, but were taken for blends
 };
 
 }  // namespace tincture

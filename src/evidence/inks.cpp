@@ -168,8 +168,9 @@ class Inks {
 
 }  // namespace
 
-std::vector<double> ink_weights(const std::vector<Peak>& peaks, const PeakPlaces& places,
-                                double softness, double pixels, double radius) {
+InkWeights ink_weights(const std::vector<Peak>& peaks, const PeakPlaces& places, double softness,
+                       double pixels, double radius) {
+    InkWeights result;
     Inks inks(peaks, places, softness, radius);
     std::vector<std::size_t> order(peaks.size());
     for (std::size_t i = 0; i < order.size(); ++i) order[i] = i;
@@ -183,7 +184,11 @@ std::vector<double> ink_weights(const std::vector<Peak>& peaks, const PeakPlaces
         const double weight = standing_out(peaks[i], body, peaks[i].weight / pixels);
         perhaps_stroke[i] = weight <= 0 && body.open < open_from;
         if (weight <= 0) continue;
-        if (inks.is_blend(i, body, peaks[i].weight / pixels, weight)) continue;
+        const double share = peaks[i].weight / pixels;
+        if (inks.is_blend(i, body, share, weight)) {
+            result.perhaps_more += weight >= hardly_stands_out ? 1 : 0;
+            continue;
+        }
         inks.accept(i, weight);
     }
     for (const std::size_t i : order) {
@@ -191,7 +196,8 @@ std::vector<double> ink_weights(const std::vector<Peak>& peaks, const PeakPlaces
         if (inks.near_an_ink(i) || inks.explained(i, beyond)) continue;
         inks.accept(i, 1);
     }
-    return inks.weights();
+    result.weight = inks.weights();
+    return result;
 }
 
 }  // namespace tincture

@@ -92,7 +92,7 @@ double weight_of(const Peak& one, const Peak& two, const Peak& last, const Wante
     const FlatScene drawn = scene(one, two, last, wanted.place);
     const PeakPlaces places(drawn.map(), peaks, wanted.found_with);
     const std::vector<double> weights =
-        ink_weights(peaks, places, wanted.softness, wanted.of_pixels, wanted.found_with);
+        ink_weights(peaks, places, wanted.softness, wanted.of_pixels, wanted.found_with).weight;
     EXPECT_EQ(weights.size(), 3U);
     EXPECT_EQ(weights[0], 1);
     EXPECT_EQ(weights[1], 1);
@@ -105,8 +105,8 @@ double weight_of(const Peak& last, const Wanted& wanted = {}) {
 TEST(InkWeights, AreThePeaksThatStandOut) {
     EXPECT_EQ(weight_of(red), 1);
     const PeakPlaces nowhere(FlatMap{}, {}, radius);
-    EXPECT_TRUE(ink_weights({}, nowhere, 0, pixels, radius).empty());
-    EXPECT_EQ(ink_weights({red}, nowhere, 0, pixels, radius), (std::vector<double>{1}));
+    EXPECT_TRUE(ink_weights({}, nowhere, 0, pixels, radius).weight.empty());
+    EXPECT_EQ(ink_weights({red}, nowhere, 0, pixels, radius).weight, (std::vector<double>{1}));
 }
 
 TEST(InkWeights, AreNoBlendsAlongEdges) {
@@ -201,8 +201,8 @@ TEST(InkWeights, OfThinStrokesAreOffEveryLine) {
 TEST(InkWeights, OfThinStrokesAreFarFromOthers) {
     const PeakPlaces nowhere(FlatMap{}, {}, radius);
     const auto beside_red = [&](double prominence, double found_with) {
-        return ink_weights({red, {50, 60, 47, 5000, prominence}}, nowhere, 0.3, pixels,
-                           found_with)[1];
+        return ink_weights({red, {50, 60, 47, 5000, prominence}}, nowhere, 0.3, pixels, found_with)
+            .weight[1];
     };
     EXPECT_EQ(beside_red(0.4, 2.2), 1);
     EXPECT_EQ(beside_red(0.4, 2.4), 0);
@@ -215,11 +215,12 @@ TEST(InkWeights, AreTheSameInAnyOrder) {
     const FlatScene drawn = scene(paper, black, mix, Place::edge);
     std::vector<Peak> peaks = {red, mix, paper, {40, -50, 20, 5000, 0.3}, black};
     const std::vector<double> wanted = {1, 0, 1, 1, 1};
-    EXPECT_EQ(ink_weights(peaks, PeakPlaces(drawn.map(), peaks, radius), 0.3, pixels, radius),
-              wanted);
+    EXPECT_EQ(
+        ink_weights(peaks, PeakPlaces(drawn.map(), peaks, radius), 0.3, pixels, radius).weight,
+        wanted);
     std::reverse(peaks.begin(), peaks.end());
     std::vector<double> weights =
-        ink_weights(peaks, PeakPlaces(drawn.map(), peaks, radius), 0.3, pixels, radius);
+        ink_weights(peaks, PeakPlaces(drawn.map(), peaks, radius), 0.3, pixels, radius).weight;
     std::reverse(weights.begin(), weights.end());
     EXPECT_EQ(weights, wanted);
 }
