@@ -1,5 +1,8 @@
 #include "choose/measure.h"
 
+#include <algorithm>
+
+#include "choose/code_length.h"
 #include "choose/error_curve.h"
 #include "palette/written_colours.h"
 #include "support/cancel.h"
@@ -7,6 +10,8 @@
 
 namespace tincture {
 namespace {
+
+constexpr double bit = 0.693147180559945309;  // in nats
 
 std::vector<Lab> labs_of(const Centres& centres) {
     std::vector<Lab> labs;
@@ -34,6 +39,7 @@ void measure_curve(Study& study, const ColourTable& table, const Sweep& sweep,
         const PaletteCost cost = measure_cost(table, labs);
         study.palettes[at] =
             make_palette(written, labs, cost.pixels, sweep.kept, written_space, srgb);
+        const std::vector<double>& weights = sweep.weights[at];
         const double evidence = sweep.objective[at] / sweep.weight;
         study.curve[at] = {sweep.centres[at].count,
                            evidence,
@@ -42,7 +48,8 @@ void measure_curve(Study& study, const ColourTable& table, const Sweep& sweep,
                            cost.p95_de00,
                            cost.max_de00,
                            closest_pair(labs),
-                           sweep.least_weight[at] / sweep.weight};
+                           *std::min_element(weights.begin(), weights.end()) / sweep.weight,
+                           label_entropy(weights) / bit};
     });
 }
 

@@ -39,6 +39,7 @@ struct CurvePoint {
     double max_de00 = 0;
     std::optional<double> closest_pair_de00;  // between two palette colours; unset below 2 colours
     double least_evidence_share = 1;  // the smallest part of the evidence that one colour is for
+    double label_bits = 0;  // entropy of which colour a pixel of the evidence is for, bits a pixel
 };
 
 // What one criterion says of the count, with its reason in words and its figure.

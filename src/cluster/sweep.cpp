@@ -74,9 +74,8 @@ void polish(const WeightedPoints& points, Centres& centres, const LloydLimits& l
             std::size_t at, Sweep& sweep) {
     Partition partition(points, centres.count);
     sweep.objective[at] = lloyd(points, centres, sweep.kept, limits, partition);
-    double least = points.total_weight;
-    for (int k = 0; k < centres.count; ++k) least = std::min(least, partition.weight(k));
-    sweep.least_weight[at] = least;
+    sweep.weights[at].clear();
+    for (int k = 0; k < centres.count; ++k) sweep.weights[at].push_back(partition.weight(k));
 }
 
 // A result that is worse than the count before it starts from that instead, with one centre more.
@@ -109,7 +108,7 @@ Sweep sweep_counts(const WeightedPoints& points, const SweepOptions& options) {
     reach_further(points, cells, options, sweep.centres);
 
     sweep.objective.resize(sweep.centres.size());
-    sweep.least_weight.resize(sweep.centres.size());
+    sweep.weights.resize(sweep.centres.size());
     std::atomic<std::size_t> done{0};
     std::mutex reporting;
     // The largest counts take longest: they go first, so that the threads end together.
