@@ -14,6 +14,7 @@ std::vector<Vote> collect_votes(const Study& study) {
             look_alikes_vote(study),
             tolerance_vote(study),
             description_length_vote(study),
+            stability_vote(study),
             distinct_colours_vote(study),
             second_difference_vote(study)};
 }

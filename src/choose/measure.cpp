@@ -1,9 +1,11 @@
 #include "choose/measure.h"
 
 #include <algorithm>
+#include <cmath>
 
 #include "choose/code_length.h"
 #include "choose/error_curve.h"
+#include "choose/prediction_strength.h"
 #include "palette/written_colours.h"
 #include "support/cancel.h"
 #include "support/parallel.h"
@@ -49,8 +51,25 @@ void measure_curve(Study& study, const ColourTable& table, const Sweep& sweep,
                            cost.max_de00,
                            closest_pair(labs),
                            *std::min_element(weights.begin(), weights.end()) / sweep.weight,
-                           label_entropy(weights) / bit};
+                           label_entropy(weights) / bit,
+                           std::nullopt};
     });
+}
+
+void measure_stability(Study& study, const Sweep& sweep, std::uint64_t seed) {
+    constexpr std::size_t most_counts = 25;  // more colours than that are not told apart by halves
+    // Found by trial on drawn posters.
+    constexpr double units_a_cell = 40;
+    constexpr double unseen = 2;  // mean squared dE76 that nobody sees in a flat area
+    const double noise = study.evidence.noise.value_or(0);
+    Halving halving;
+    halving.seed = seed;
+    halving.units_a_cell = units_a_cell;
+    halving.blur = std::sqrt((unseen + noise * noise) / 3);
+    const std::size_t counts = std::min(sweep.centres.size(), most_counts);
+    const std::vector<double> strengths = prediction_strengths(
+        sweep.coarse, counts, halving, grown_from({sweep.centres.data(), counts}, sweep.kept));
+    for (std::size_t i = 0; i < counts; ++i) study.curve[i].prediction_strength = strengths[i];
 }
 
 }  // namespace tincture

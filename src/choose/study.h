@@ -40,6 +40,8 @@ struct CurvePoint {
     std::optional<double> closest_pair_de00;  // between two palette colours; unset below 2 colours
     double least_evidence_share = 1;  // the smallest part of the evidence that one colour is for
     double label_bits = 0;  // entropy of which colour a pixel of the evidence is for, bits a pixel
+    // How far halves of the evidence agree, 0 to 1; unset for large counts.
+    std::optional<double> prediction_strength{};
 };
 
 // What one criterion says of the count, with its reason in words and its figure.

@@ -103,8 +103,9 @@ Sweep sweep_counts(const WeightedPoints& points, const SweepOptions& options) {
     const std::size_t few_points = coarse_size(points);
     const bool few = points.n <= few_points;
     const bool merged = !few && cells.n < points.n / 2;
-    sweep.centres = search_counts(few ? points : coarse_points(cells, few_points), options.kept,
-                                  options.max_count, [&](double part) { report(part * 0.4); });
+    sweep.coarse = few ? points : coarse_points(cells, few_points);
+    sweep.centres = search_counts(sweep.coarse, options.kept, options.max_count,
+                                  [&](double part) { report(part * 0.4); });
     reach_further(points, cells, options, sweep.centres);
 
     sweep.objective.resize(sweep.centres.size());

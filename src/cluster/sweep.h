@@ -24,6 +24,7 @@ struct Sweep {
     std::vector<double> objective;
     std::vector<std::vector<double>> weights;  // for each count, of the points of each centre
     double weight = 0;                         // of all points
+    WeightedPoints coarse;                     // the few cells that centres were searched on
     int kept = 0;
 };
 

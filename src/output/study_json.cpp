@@ -15,6 +15,7 @@ using Json = nlohmann::ordered_json;
 constexpr int mse_decimals = 6;
 constexpr int share_decimals = 6;
 constexpr int de_decimals = 4;
+constexpr int bit_decimals = 4;
 constexpr int lab_decimals = 4;
 constexpr int dpi_decimals = 3;
 
@@ -55,7 +56,9 @@ Json curve_json(const std::vector<CurvePoint>& curve) {
                         {"mean_de00", rounded(point.mean_de00, de_decimals)},
                         {"p95_de00", rounded(point.p95_de00, de_decimals)},
                         {"max_de00", rounded(point.max_de00, de_decimals)},
-                        {"closest_pair_de00", known(point.closest_pair_de00, de_decimals)}});
+                        {"closest_pair_de00", known(point.closest_pair_de00, de_decimals)},
+                        {"label_bits", rounded(point.label_bits, bit_decimals)},
+                        {"prediction_strength", known(point.prediction_strength, share_decimals)}});
     }
     return json;
 }

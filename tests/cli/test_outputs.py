@@ -17,7 +17,8 @@ import pictures
 from running import FILES, MANIFEST, PROJECT, contents, environment, names_in, reduce, run, sanitized, study_of
 
 SWATCH_COLUMNS = ["index", "name", "hex", "L", "a", "b", "share", "pixels"]
-CURVE_COLUMNS = ["count", "evidence_mse", "mse", "mean_de00", "p95_de00", "max_de00", "closest_pair_de00"]
+CURVE_COLUMNS = ["count", "evidence_mse", "mse", "mean_de00", "p95_de00", "max_de00", "closest_pair_de00", "label_bits",
+                 "prediction_strength"]
 CASES = ("poster", "noisy", "flat", "deep", "grey", "wide")
 
 

@@ -76,6 +76,8 @@ Study study_of(const std::string& file, const std::vector<int>& counts,
         CurvePoint point{count,       evidence(count), mse(count), 0.42 * root,
                          1.25 * root, 2.2 * root,      {}};
         if (count > 1) point.closest_pair_de00 = 60.0 / count;
+        point.label_bits = 0.8 * std::log2(count);
+        if (count <= 25) point.prediction_strength = count > 1 ? 1.4 / count : 1;
         study.curve.push_back(point);
         study.palettes.push_back(palette_of(count, study.picture.opaque_pixels, random));
     }

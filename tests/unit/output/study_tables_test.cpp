@@ -51,13 +51,17 @@ TEST(CurveCsv, HoldsTheCurve) {
     const Rows rows = read_csv(curve_csv(study));
     ASSERT_EQ(rows.size(), 13U);
     EXPECT_EQ(rows[0], (std::vector<std::string>{"count", "evidence_mse", "mse", "mean_de00",
-                                                 "p95_de00", "max_de00", "closest_pair_de00"}));
+                                                 "p95_de00", "max_de00", "closest_pair_de00",
+                                                 "label_bits", "prediction_strength"}));
     EXPECT_EQ(rows[1][0], "1");
     EXPECT_EQ(rows[1][6], "") << "one colour has no pair";
     EXPECT_EQ(rows[2][1], "1234567.123457");
     EXPECT_EQ(rows[2][5], "0.0000");
     EXPECT_EQ(rows[2][6], "30.0000");
     EXPECT_EQ(rows[12][2], "0.000000");
+    EXPECT_EQ(rows[4][7], "1.6000");
+    EXPECT_EQ(rows[4][8], "0.350000");
+    EXPECT_EQ(read_csv(curve_csv(fixtures::many()))[30][8], "") << "not measured";
 }
 
 TEST(SwatchCsv, HoldsThePaletteOfTheCount) {
@@ -103,7 +107,8 @@ TEST(StudyJson, HasTheKeysInTheirOrder) {
                                         "dpi", "opaque_pixels", "distinct_colours"}));
     EXPECT_EQ(keys_of(json["curve"][3]),
               (std::vector<std::string>{"count", "evidence_mse", "mse", "mean_de00", "p95_de00",
-                                        "max_de00", "closest_pair_de00"}));
+                                        "max_de00", "closest_pair_de00", "label_bits",
+                                        "prediction_strength"}));
     EXPECT_EQ(keys_of(json["proposal"]),
               (std::vector<std::string>{"count", "range", "confidence", "sentence", "votes"}));
     EXPECT_EQ(keys_of(json["palettes"][6]["colours"][0]),
@@ -137,6 +142,9 @@ TEST(StudyJson, WhatIsUnknownIsNull) {
     EXPECT_TRUE(json["evidence"]["noise"].is_null());
     EXPECT_TRUE(json["proposal"]["votes"][0]["count"].is_null());
     EXPECT_TRUE(json["curve"][0]["closest_pair_de00"].is_null());
+    const Json many = Json::parse(study_json(fixtures::many(), ""));
+    EXPECT_TRUE(many["curve"][29]["prediction_strength"].is_null());
+    EXPECT_EQ(many["curve"][3]["prediction_strength"], 0.35);
     Study study = fixtures::single_colour();
     study.labels = {};
     study.curve[0].mse = std::numeric_limits<double>::quiet_NaN();
