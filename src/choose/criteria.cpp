@@ -13,6 +13,8 @@ std::vector<Vote> collect_votes(const Study& study) {
             knee_vote(study),
             look_alikes_vote(study),
             tolerance_vote(study),
+            description_length_vote(study),
+            stability_vote(study),
             distinct_colours_vote(study),
             second_difference_vote(study)};
 }

@@ -38,6 +38,12 @@ struct CountRange {
 // All colours of the picture, where these are no more than the range allows.
 [[nodiscard]] Vote distinct_colours_vote(const Study& study);
 
+// The count that takes the fewest bits to describe the evidence.
+[[nodiscard]] Vote description_length_vote(const Study& study);
+
+// The largest palette that halves of the evidence find alike.
+[[nodiscard]] Vote stability_vote(const Study& study);
+
 [[nodiscard]] std::vector<Vote> collect_votes(const Study& study);
 
 }  // namespace tincture

@@ -29,13 +29,17 @@ struct References {
     }
 };
 
-// Adds the colours [start, start + size) to the cost and writes their differences.
-void measure_block(const ColourTable& table, References& references, std::size_t start,
-                   std::size_t size, PaletteCost& cost, float* de00) {
+std::array<const float*, 3> planes_from(const ColourTable& table, std::size_t start) {
+    return {table.L.data() + start, table.a.data() + start, table.b.data() + start};
+}
+
+// Adds the colours [start, start + size) to the cost and writes their differences; `labels` are
+// theirs, and change from those of the palette before to those of this one.
+void measure_block(const ColourTable& table, const References& references, std::size_t start,
+                   std::size_t size, PaletteCost& cost, std::uint16_t* labels, float* de00) {
     std::array<std::uint16_t, block_size> label;
     std::array<float, block_size> squared;
-    const std::array<const float*, 3> plane = {table.L.data() + start, table.a.data() + start,
-                                               table.b.data() + start};
+    const std::array<const float*, 3> plane = planes_from(table, start);
     nearest_centres({plane.data(), 3, size}, references.centres, label.data(), squared.data());
     delta_e_2000_batch({plane[0], plane[1], plane[2], label.data(), size},
                        {references.L.data(), references.a.data(), references.b.data()}, de00);
@@ -43,28 +47,68 @@ void measure_block(const ColourTable& table, References& references, std::size_t
         const std::uint64_t count = table.count[start + i];
         const auto weight = static_cast<double>(count);
         cost.mse += weight * static_cast<double>(squared[i]);
-        cost.mean_de00 += weight * static_cast<double>(de00[i]);
-        cost.max_de00 = std::max(cost.max_de00, static_cast<double>(de00[i]));
-        cost.pixels[label[i]] += count;
+        const auto off = static_cast<double>(de00[i]);
+        cost.crossing.costs[labels[i] * cost.crossing.into + label[i]].add(
+            {count, weight * off, off});
     }
+    std::copy_n(label.begin(), size, labels);
 }
 
 }  // namespace
 
-PaletteCost measure_cost(const ColourTable& table, std::span<const Lab> colours) {
+void PixelCost::add(const PixelCost& other) {
+    pixels += other.pixels;
+    de00 += other.de00;
+    worst = std::max(worst, other.worst);
+}
+
+std::vector<PixelCost> Crossing::sums() const {
+    std::vector<PixelCost> sums(into);
+    for (std::size_t i = 0; i < costs.size(); ++i) sums[i % into].add(costs[i]);
+    return sums;
+}
+
+TableLabels nearest_of_table(const ColourTable& table, std::span<const Lab> colours) {
+    const References references(colours);
+    TableLabels labels(table.size());
+    std::array<float, block_size> squared;
+    for (std::size_t start = 0; start < table.size(); start += block_size) {
+        const std::array<const float*, 3> plane = planes_from(table, start);
+        nearest_centres({plane.data(), 3, std::min(block_size, table.size() - start)},
+                        references.centres, labels.data() + start, squared.data());
+    }
+    return labels;
+}
+
+PaletteCost measure_cost(const ColourTable& table, std::span<const Lab> colours,
+                         TableLabels& labels, std::size_t labelled) {
+    if (labels.empty()) {
+        labels.assign(table.size(), 0);
+        labelled = 1;
+    }
     PaletteCost cost;
-    cost.pixels.assign(colours.size(), 0);
-    References references(colours);
+    cost.crossing = {colours.size(), std::vector<PixelCost>(labelled * colours.size())};
+    const References references(colours);
     std::vector<float> de00(table.size());
     for (std::size_t start = 0; start < table.size(); start += block_size) {
         measure_block(table, references, start, std::min(block_size, table.size() - start), cost,
-                      de00.data() + start);
+                      labels.data() + start, de00.data() + start);
+    }
+    for (const PixelCost& sum : cost.crossing.sums()) {
+        cost.pixels.push_back(sum.pixels);
+        cost.mean_de00 += sum.de00;
+        cost.max_de00 = std::max(cost.max_de00, sum.worst);
     }
     const auto pixels = static_cast<double>(table.opaque_pixels);
     cost.mse = (cost.mse + table.inner_scatter) / pixels;
     cost.mean_de00 /= pixels;
     cost.p95_de00 = static_cast<double>(weighted_quantile(de00, table.count, 0.95));
     return cost;
+}
+
+PaletteCost measure_cost(const ColourTable& table, std::span<const Lab> colours) {
+    TableLabels labels;
+    return measure_cost(table, colours, labels, 1);
 }
 
 float weighted_quantile(std::span<const float> values, std::span<const std::uint64_t> weights,

@@ -13,4 +13,8 @@ namespace tincture {
 void measure_curve(Study& study, const ColourTable& table, const Sweep& sweep,
                    const ColourSpace& written_space);
 
+// Halves the evidence some times and fills `prediction_strength` of the first counts of the curve.
+// Needs the curve of the same sweep, and the evidence's noise.
+void measure_stability(Study& study, const Sweep& sweep, std::uint64_t seed = 1);
+
 }  // namespace tincture

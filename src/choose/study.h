@@ -28,6 +28,21 @@ struct PictureFacts {
     std::optional<double> colour_cell_de;
 };
 
+// What got worse by dropping to a count from the one above it. The colours of the two palettes are
+// partners by the pixels that they share; the one that stays without a partner is the one that was
+// lost. All figures are over the pixels that were nearest to it.
+struct CountLoss {
+    std::size_t colour = 0;    // its place in the palette of one colour more
+    std::size_t into = 0;      // place in this palette of the colour that most of its pixels get
+    std::uint64_t pixels = 0;  // that were nearest to it
+    double share = 0;          // pixels / opaque pixels
+    double into_share = 0;     // part of them that gets `into`
+    double mean_de00 = 0;      // against the colours that they get
+    double max_de00 = 0;
+    double mean_de00_before = 0;  // against the colour that was lost
+    double max_de00_before = 0;
+};
+
 // One row of the error curve. All but evidence_mse are over every opaque pixel, each against the
 // written palette colour nearest to it in CIELAB.
 struct CurvePoint {
@@ -39,6 +54,10 @@ struct CurvePoint {
     double max_de00 = 0;
     std::optional<double> closest_pair_de00;  // between two palette colours; unset below 2 colours
     double least_evidence_share = 1;  // the smallest part of the evidence that one colour is for
+    double label_bits = 0;  // entropy of which colour a pixel of the evidence is for, bits a pixel
+    // How far halves of the evidence agree, 0 to 1; unset for large counts.
+    std::optional<double> prediction_strength{};
+    std::optional<CountLoss> loss{};  // unset where one colour more was not measured
 };
 
 // What one criterion says of the count, with its reason in words and its figure.

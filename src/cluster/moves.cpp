@@ -28,17 +28,21 @@ Split split_from_kept(const WeightedPoints& points, const Members& members, std:
     return split;
 }
 
+Split split_of(const WeightedPoints& points, int kept, const Members& members, std::size_t k) {
+    Split split = split_cluster(points, members.index.data() + members.start[k],
+                                members.start[k + 1] - members.start[k]);
+    if (split.gain <= 0 && static_cast<int>(k) < kept && members.scatter[k] > 0) {
+        split = split_from_kept(points, members, k);
+    }
+    return split;
+}
+
 // The clusters whose split gains most, at most `wanted`, best first.
 std::vector<ClusterSplit> best_splits(const WeightedPoints& points, int kept,
                                       const Members& members, std::size_t wanted) {
     std::vector<ClusterSplit> splits(members.scatter.size());
     parallel_for(splits.size(), [&](std::size_t k) {
-        Split split = split_cluster(points, members.index.data() + members.start[k],
-                                    members.start[k + 1] - members.start[k]);
-        if (split.gain <= 0 && static_cast<int>(k) < kept && members.scatter[k] > 0) {
-            split = split_from_kept(points, members, k);
-        }
-        splits[k] = {static_cast<int>(k), std::move(split)};
+        splits[k] = {static_cast<int>(k), split_of(points, kept, members, k)};
     });
     std::erase_if(splits, [](const ClusterSplit& s) { return s.split.gain <= 0; });
     std::stable_sort(splits.begin(), splits.end(),
@@ -47,6 +51,24 @@ std::vector<ClusterSplit> best_splits(const WeightedPoints& points, int kept,
                      });
     if (splits.size() > wanted) splits.resize(wanted);
     return splits;
+}
+
+// The cluster whose split gains most. No split gains more than the cluster's scatter, so that most
+// need not be tried.
+ClusterSplit best_split(const WeightedPoints& points, int kept, const Members& members) {
+    std::vector<int> order(members.scatter.size());
+    std::iota(order.begin(), order.end(), 0);
+    std::stable_sort(order.begin(), order.end(), [&](int one, int two) {
+        return members.scatter[static_cast<std::size_t>(one)] >
+               members.scatter[static_cast<std::size_t>(two)];
+    });
+    ClusterSplit best{0, {}};
+    for (const int k : order) {
+        if (members.scatter[static_cast<std::size_t>(k)] <= best.split.gain) break;
+        Split split = split_of(points, kept, members, static_cast<std::size_t>(k));
+        if (split.gain > best.split.gain) best = {k, std::move(split)};
+    }
+    return best;
 }
 
 // Puts the halves of a split in place of its cluster: one takes the cluster's row, the other a new
@@ -125,10 +147,9 @@ Moves moves_of(const WeightedPoints& points, const Solution& from, int kept) {
 }
 
 bool add_centre(const WeightedPoints& points, Centres& centres, int kept) {
-    const std::vector<ClusterSplit> best =
-        best_splits(points, kept, members_of(points, centres), 1);
-    if (best.empty()) return false;
-    apply_split(centres, best.front(), kept);
+    const ClusterSplit best = best_split(points, kept, members_of(points, centres));
+    if (best.split.gain <= 0) return false;
+    apply_split(centres, best, kept);
     return true;
 }
 

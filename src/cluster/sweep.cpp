@@ -74,9 +74,8 @@ void polish(const WeightedPoints& points, Centres& centres, const LloydLimits& l
             std::size_t at, Sweep& sweep) {
     Partition partition(points, centres.count);
     sweep.objective[at] = lloyd(points, centres, sweep.kept, limits, partition);
-    double least = points.total_weight;
-    for (int k = 0; k < centres.count; ++k) least = std::min(least, partition.weight(k));
-    sweep.least_weight[at] = least;
+    sweep.weights[at].clear();
+    for (int k = 0; k < centres.count; ++k) sweep.weights[at].push_back(partition.weight(k));
 }
 
 // A result that is worse than the count before it starts from that instead, with one centre more.
@@ -104,12 +103,13 @@ Sweep sweep_counts(const WeightedPoints& points, const SweepOptions& options) {
     const std::size_t few_points = coarse_size(points);
     const bool few = points.n <= few_points;
     const bool merged = !few && cells.n < points.n / 2;
-    sweep.centres = search_counts(few ? points : coarse_points(cells, few_points), options.kept,
-                                  options.max_count, [&](double part) { report(part * 0.4); });
+    sweep.coarse = few ? points : coarse_points(cells, few_points);
+    sweep.centres = search_counts(sweep.coarse, options.kept, options.max_count,
+                                  [&](double part) { report(part * 0.4); });
     reach_further(points, cells, options, sweep.centres);
 
     sweep.objective.resize(sweep.centres.size());
-    sweep.least_weight.resize(sweep.centres.size());
+    sweep.weights.resize(sweep.centres.size());
     std::atomic<std::size_t> done{0};
     std::mutex reporting;
     // The largest counts take longest: they go first, so that the threads end together.

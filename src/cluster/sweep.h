@@ -22,8 +22,9 @@ struct SweepOptions {
 struct Sweep {
     std::vector<Centres> centres;
     std::vector<double> objective;
-    std::vector<double> least_weight;  // for each count, of the points of its lightest centre
-    double weight = 0;                 // of all points
+    std::vector<std::vector<double>> weights;  // for each count, of the points of each centre
+    double weight = 0;                         // of all points
+    WeightedPoints coarse;                     // the few cells that centres were searched on
     int kept = 0;
 };
 

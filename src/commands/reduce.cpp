@@ -195,6 +195,7 @@ void run_reduce(const ReduceOptions& options, const Terminal& terminal) {
 
     progress.stage("measuring", 0.8, 0.9);
     measure_curve(study, table, sweep, written);
+    measure_stability(study, sweep);
     study.proposal = propose(study);
     settle_count(study, options.choosing.count, !picture.opaque.empty());
 

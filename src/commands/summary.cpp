@@ -6,6 +6,8 @@
 
 #include "choose/criteria.h"
 #include "colour/notation.h"
+#include "commands/step_table.h"
+#include "commands/styles.h"
 #include "commands/text_layout.h"
 #include "support/format.h"
 #include "support/maths.h"
@@ -15,38 +17,7 @@ namespace tincture {
 namespace {
 
 constexpr std::size_t longest_list = 24;
-constexpr std::size_t margin = 2;
 constexpr std::size_t mark_sign = 3;  // columns of what leads from a bar to its mark
-
-std::string styled(const std::string& text, const char* code, const Terminal& terminal) {
-    return terminal.colour ? std::string("\x1b[") + code + "m" + text + "\x1b[0m" : text;
-}
-std::string bold(const std::string& text, const Terminal& terminal) {
-    return styled(text, "1", terminal);
-}
-std::string faint(const std::string& text, const Terminal& terminal) {
-    return styled(text, "2", terminal);
-}
-
-std::size_t width_of(const Terminal& terminal) {
-    return static_cast<std::size_t>(terminal.width);
-}
-
-// Whether there is room for what is of second importance.
-bool is_roomy(const Terminal& terminal) {
-    return terminal.width >= 68;
-}
-
-std::string paragraph(const std::string& text, const Terminal& terminal) {
-    return wrapped(std::string(margin, ' '), text, width_of(terminal), margin);
-}
-
-// A paragraph that steps back behind the figures.
-std::string remark(const std::string& text, const Terminal& terminal) {
-    std::string lines = paragraph(text, terminal);
-    lines.pop_back();
-    return faint(lines, terminal) + "\n";
-}
 
 std::string picture_lines(const Study& study, const Terminal& terminal) {
     const PictureFacts& facts = study.picture;
@@ -92,13 +63,6 @@ std::string proposal_lines(const Study& study, const std::optional<int>& asked,
                             terminal);
 }
 
-std::string chip(Rgb8 colour, const Terminal& terminal) {
-    if (!terminal.colour) return "";
-    return "\x1b[48;2;" + std::to_string(colour.r) + ";" + std::to_string(colour.g) + ";" +
-           std::to_string(colour.b) + "m" + std::string(is_roomy(terminal) ? 6 : 3, ' ') +
-           "\x1b[0m ";
-}
-
 std::string swatch_line(const Swatch& swatch, const Terminal& terminal) {
     std::string figures =
         flush_right(fixed(100 * swatch.share, 1), 5) + " %  " + hex(swatch.srgb) + "  ";
@@ -110,8 +74,7 @@ std::string swatch_line(const Swatch& swatch, const Terminal& terminal) {
     std::string name = swatch.name;
     if (swatch.kept) name += " (kept)";
     if (swatch.hex_de00) name += " (sRGB is off by " + fixed(*swatch.hex_de00, 1) + ")";
-    const std::size_t chip_width = !terminal.colour ? 0 : is_roomy(terminal) ? 7 : 4;
-    const std::size_t used = margin + chip_width;
+    const std::size_t used = margin + chip_width(terminal);
     // The chip has no width of its own in `wrapped`: its escape sequences are put in front.
     return std::string(margin, ' ') + chip(swatch.srgb, terminal) +
            wrapped(figures, name, width_of(terminal) - used, used + columns_of(figures));
@@ -119,7 +82,7 @@ std::string swatch_line(const Swatch& swatch, const Terminal& terminal) {
 
 std::string swatch_lines(const Study& study, const Terminal& terminal) {
     const Palette& palette = palette_at(study, study.count);
-    std::string head(margin + (!terminal.colour ? 0 : is_roomy(terminal) ? 7 : 4), ' ');
+    std::string head(margin + chip_width(terminal), ' ');
     head += "  share  sRGB     ";
     if (is_roomy(terminal)) head += "    L*      a*      b*  ";
     std::string text = faint(head + "name", terminal) + "\n";
@@ -290,7 +253,7 @@ std::string summary(const Study& study, const std::optional<int>& asked, const T
                     const std::string& folder) {
     return picture_lines(study, terminal) + "\n" + proposal_lines(study, asked, terminal) + "\n" +
            swatch_lines(study, terminal) + "\n" + curve_lines(study, terminal) + "\n" +
-           file_lines(study, terminal, folder);
+           step_lines(study, terminal) + file_lines(study, terminal, folder);
 }
 
 }  // namespace tincture

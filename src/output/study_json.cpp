@@ -15,6 +15,7 @@ using Json = nlohmann::ordered_json;
 constexpr int mse_decimals = 6;
 constexpr int share_decimals = 6;
 constexpr int de_decimals = 4;
+constexpr int bit_decimals = 4;
 constexpr int lab_decimals = 4;
 constexpr int dpi_decimals = 3;
 
@@ -46,16 +47,38 @@ Json picture_json(const PictureFacts& picture) {
     return json;
 }
 
-Json curve_json(const std::vector<CurvePoint>& curve) {
+Json place_json(const Palette& palette, std::size_t place) {
+    const Swatch& swatch = palette.swatches.at(place);
+    return {{"index", place}, {"name", swatch.name}, {"hex", hex(swatch.srgb)}};
+}
+
+Json loss_json(const Study& study, const CurvePoint& point) {
+    if (!point.loss) return nullptr;
+    const CountLoss& loss = *point.loss;
+    return {{"colour", place_json(palette_at(study, point.count + 1), loss.colour)},
+            {"into", place_json(palette_at(study, point.count), loss.into)},
+            {"share", rounded(loss.share, share_decimals)},
+            {"pixels", loss.pixels},
+            {"into_share", rounded(loss.into_share, share_decimals)},
+            {"mean_de00", rounded(loss.mean_de00, de_decimals)},
+            {"max_de00", rounded(loss.max_de00, de_decimals)},
+            {"mean_de00_before", rounded(loss.mean_de00_before, de_decimals)},
+            {"max_de00_before", rounded(loss.max_de00_before, de_decimals)}};
+}
+
+Json curve_json(const Study& study) {
     Json json = Json::array();
-    for (const CurvePoint& point : curve) {
+    for (const CurvePoint& point : study.curve) {
         json.push_back({{"count", point.count},
                         {"evidence_mse", rounded(point.evidence_mse, mse_decimals)},
                         {"mse", rounded(point.mse, mse_decimals)},
                         {"mean_de00", rounded(point.mean_de00, de_decimals)},
                         {"p95_de00", rounded(point.p95_de00, de_decimals)},
                         {"max_de00", rounded(point.max_de00, de_decimals)},
-                        {"closest_pair_de00", known(point.closest_pair_de00, de_decimals)}});
+                        {"closest_pair_de00", known(point.closest_pair_de00, de_decimals)},
+                        {"label_bits", rounded(point.label_bits, bit_decimals)},
+                        {"prediction_strength", known(point.prediction_strength, share_decimals)},
+                        {"loss", loss_json(study, point)}});
     }
     return json;
 }
@@ -113,7 +136,7 @@ std::string study_json(const Study& study, std::string_view version) {
                          {"flat_share", known(study.evidence.flat_share, share_decimals)},
                          {"noise", known(study.evidence.noise, de_decimals)}}},
                        {"tolerance", rounded(study.tolerance, de_decimals)},
-                       {"curve", curve_json(study.curve)},
+                       {"curve", curve_json(study)},
                        {"proposal", proposal_json(study.proposal)},
                        {"count", study.count},
                        {"count_was_given", study.count_was_given},

@@ -172,7 +172,7 @@ def test_one_colour_alone_works(tmp_path, shape):
     assert colours_in(folder) == {(12, 200, 77): shape[0] * shape[1]}
     point, = study["curve"]
     assert point == {"count": 1, "evidence_mse": 0, "mse": 0, "mean_de00": 0, "p95_de00": 0, "max_de00": 0,
-                     "closest_pair_de00": None}
+                     "closest_pair_de00": None, "label_bits": 0, "prediction_strength": 1, "loss": None}
 
 
 @pytest.mark.parametrize("dtype, half", [(np.uint8, 128), (np.uint16, 32768)])

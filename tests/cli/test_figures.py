@@ -134,6 +134,65 @@ def test_every_column_of_the_curve_at_every_count(measured):
         assert point["max_de00"] == pytest.approx(de00.max(), abs=DE00_ERROR), where
 
 
+def partnerless(more, fewer, shared):
+    """The place of the colour of the larger palette that finds no partner, and how sure that is: the
+    least difference in pixels that decided between two pairs."""
+    had, has, margin = set(), set(), np.inf
+    for i, one in enumerate(more):
+        for j, two in enumerate(fewer):
+            if one["lab"] == two["lab"]:
+                had.add(i), has.add(j)
+    apart = np.sqrt(colour_maths.squared_distances(*(np.array([c["lab"] for c in p]) for p in (more, fewer))))
+    pairs = sorted(np.ndindex(shared.shape), key=lambda pair: (-shared[pair], apart[pair]))
+    while len(has) < len(fewer):
+        left = [pair for pair in pairs if pair[0] not in had and pair[1] not in has]
+        i, j = left[0]
+        rivals = [shared[pair] for pair in left[1:] if (pair[0] == i) != (pair[1] == j)]
+        margin = min([margin, *(shared[i, j] - rival for rival in rivals[:1])])
+        had.add(i), has.add(j)
+    lost, = set(range(len(more))) - had
+    return lost, margin
+
+
+def test_what_each_count_costs_against_one_more(measured):
+    """Both palettes again: where the pixels of the colour that has no partner went, and how far."""
+    compared = 0
+    for point in measured.study["curve"][:-1]:
+        more, fewer = measured.palette(point["count"] + 1), measured.palette(point["count"])
+        labels, tied = [], 0
+        for palette in (more, fewer):
+            squared = colour_maths.squared_distances(measured.lab, np.array([colour["lab"] for colour in palette]))
+            labels.append(squared.argmin(axis=1))
+            if len(palette) > 1:
+                near = np.sort(squared, axis=1)
+                tied += int(measured.weight[near[:, 1] - near[:, 0] < 0.004].sum())
+        shared = np.zeros((len(more), len(fewer)))
+        np.add.at(shared, tuple(labels), measured.weight)
+        lost, margin = partnerless(more, fewer, shared)
+        if tied and margin <= 2 * tied:
+            continue  # pixels between two colours decide, and rounding decides about them
+        compared += 1
+        loss, where = point["loss"], (measured.name, point)
+        assert loss["colour"] == {"index": lost, "name": more[lost]["name"], "hex": more[lost]["hex"]}, where
+        assert loss["pixels"] == more[lost]["pixels"] and loss["share"] == more[lost]["share"], where
+        own = labels[0] == lost
+        assert abs(int(measured.weight[own].sum()) - loss["pixels"]) <= tied, where
+        into = loss["into"]["index"]
+        assert loss["into"] == {"index": into, "name": fewer[into]["name"], "hex": fewer[into]["hex"]}, where
+        assert shared[lost, into] >= shared[lost].max() - 2 * tied, where
+        slack = 2 * tied / loss["pixels"]
+        assert loss["into_share"] == pytest.approx(shared[lost, into] / shared[lost].sum(), abs=slack + SHARE_ERROR)
+        for ending, palette, label in (("", fewer, labels[1]), ("_before", more, labels[0])):
+            lab = np.array([colour["lab"] for colour in palette])
+            off = colour_maths.ciede2000(measured.lab[own], lab[label[own]])
+            mean = float((off * measured.weight[own]).sum() / measured.weight[own].sum())
+            assert loss["mean_de00" + ending] == pytest.approx(mean, abs=DE00_ERROR + slack * off.max()), where
+            if tied == 0:
+                assert loss["max_de00" + ending] == pytest.approx(off.max(), abs=DE00_ERROR), where
+            assert loss["max_de00" + ending] <= point["max_de00"] + DE00_ERROR or ending
+    assert compared >= 0.6 * (len(measured.counts) - 1), "or this test says little"
+
+
 def test_the_closest_pair_of_every_palette(measured):
     for point in measured.study["curve"]:
         palette = measured.palette_lab(point["count"])

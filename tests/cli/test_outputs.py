@@ -17,7 +17,10 @@ import pictures
 from running import FILES, MANIFEST, PROJECT, contents, environment, names_in, reduce, run, sanitized, study_of
 
 SWATCH_COLUMNS = ["index", "name", "hex", "L", "a", "b", "share", "pixels"]
-CURVE_COLUMNS = ["count", "evidence_mse", "mse", "mean_de00", "p95_de00", "max_de00", "closest_pair_de00"]
+CURVE_COLUMNS = ["count", "evidence_mse", "mse", "mean_de00", "p95_de00", "max_de00", "closest_pair_de00", "label_bits",
+                 "prediction_strength"]
+LOSS_COLUMNS = ["lost", "lost_hex", "into", "into_hex", "lost_share", "into_share", "lost_mean_de00", "lost_max_de00",
+                "lost_mean_de00_before", "lost_max_de00_before"]
 CASES = ("poster", "noisy", "flat", "deep", "grey", "wide")
 
 
@@ -64,9 +67,19 @@ def test_swatches_csv_has_the_columns_of_the_contract_and_agrees_with_the_study(
 
 def test_curve_csv_has_the_columns_of_the_contract_and_agrees_with_the_study(case):
     header, *rows = rows_of(case.folder / "curve.csv")
-    assert header == CURVE_COLUMNS
+    assert header == CURVE_COLUMNS + LOSS_COLUMNS
+    first = len(CURVE_COLUMNS)
     for row, point in zip(rows, case.study["curve"], strict=True):
-        assert [float(value) if value else None for value in row] == list(point.values())
+        values = [point[column] for column in CURVE_COLUMNS]
+        assert [float(value) if value else None for value in row[:first]] == values
+        loss = point["loss"]
+        if loss is None:
+            assert row[first:] == [""] * len(LOSS_COLUMNS)
+            continue
+        assert row[first : first + 4] == [loss[end][key] for end in ("colour", "into") for key in ("name", "hex")]
+        assert [float(value) for value in row[first + 4 :]] == [loss[key] for key in (
+            "share", "into_share", "mean_de00", "max_de00", "mean_de00_before", "max_de00_before")]
+    assert [point["loss"] is None for point in case.study["curve"]] == [False] * (len(rows) - 1) + [True]
     assert [int(row[0]) for row in rows] == list(range(1, len(rows) + 1))
 
 

@@ -43,7 +43,22 @@ def check_content(text, study):
     for point in study["curve"]:
         if 2 <= point["count"] <= 24:
             assert re.search(rf"^\s*{point['count']}\s.*\b{point['p95_de00']:.1f}\b", plain, re.M), point
+    check_steps(words, study)
     assert "p-tincture" in words
+
+
+def check_steps(words, study):
+    """What one colour fewer costs, from one above the count that is used to three below."""
+    for point in study["curve"]:
+        loss, count = point["loss"], point["count"]
+        shown = re.search(rf"\b{count + 1} (→|>) {count}\b.*", words)
+        assert bool(shown) == (loss is not None and study["count"] - 3 <= count <= study["count"]), count
+        if shown:
+            step = re.split(r"\d+ (?:→|>) \d+|In the folder", shown.group()[len(f"{count + 1} > {count}") :])[0]
+            for part in (loss["colour"]["name"], "into " + loss["into"]["name"], f"{100 * loss['share']:.1f} %",
+                         f"{loss['mean_de00']:.1f}", f"{loss['max_de00']:.1f}"):
+                assert part in step, (part, step)
+            assert loss["into_share"] > 0.995 or f"({100 * loss['into_share']:.0f} %)" in step
 
 
 @pytest.mark.parametrize("columns", [40, 80, 120])

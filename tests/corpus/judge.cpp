@@ -38,6 +38,7 @@ Judgement judge(const Picture& picture, std::span<const Rgb8> inks) {
     study.evidence = evidence.facts;
     const Sweep sweep = sweep_counts(evidence.points, {});
     measure_curve(study, table, sweep, space);
+    measure_stability(study, sweep);
     Judgement judgement;
     judgement.proposal = propose(study);
     if (inks.empty()) return judgement;

@@ -273,6 +273,14 @@ TEST(ErrorCurve, ThreadsHaveNoSay) {
             EXPECT_EQ(one.p95_de00, two.p95_de00);
             EXPECT_EQ(one.max_de00, two.max_de00);
             EXPECT_EQ(one.closest_pair_de00, two.closest_pair_de00);
+            EXPECT_EQ(one.label_bits, two.label_bits);
+            ASSERT_EQ(one.loss.has_value(), two.loss.has_value());
+            if (one.loss) {
+                EXPECT_EQ(one.loss->colour, two.loss->colour);
+                EXPECT_EQ(one.loss->into, two.loss->into);
+                EXPECT_EQ(one.loss->mean_de00, two.loss->mean_de00);
+                EXPECT_EQ(one.loss->max_de00, two.loss->max_de00);
+            }
             for (std::size_t k = 0; k < wanted.study.palettes[i].swatches.size(); ++k) {
                 EXPECT_EQ(wanted.study.palettes[i].swatches[k].written,
                           found.study.palettes[i].swatches[k].written);

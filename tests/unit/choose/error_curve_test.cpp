@@ -129,6 +129,32 @@ TEST(MeasureCost, OfEveryColourIsNothing) {
     EXPECT_EQ(cost.pixels, (std::vector<std::uint64_t>{6, 1, 3}));
 }
 
+// Pixels are told apart by the labels that are given, and get new ones.
+TEST(MeasureCost, TellsWhereTheLabelsOfAnotherPaletteWent) {
+    const ColourTable table = small_table();
+    const std::vector<Lab> more = {{10, 0, 0}, {50, 3, 4}, {50, 0, 0}};
+    const std::vector<Lab> fewer = {{50, 0, 0}, {10, 0, 0}};
+    TableLabels labels = nearest_of_table(table, more);
+    EXPECT_EQ(labels, (TableLabels{2, 1, 0}));
+    const PaletteCost cost = measure_cost(table, fewer, labels, 3);
+    EXPECT_EQ(labels, (TableLabels{0, 0, 1}));
+    ASSERT_EQ(cost.crossing.costs.size(), 6U);
+    EXPECT_EQ(cost.crossing.at(0, 1).pixels, 1U);
+    EXPECT_EQ(cost.crossing.at(1, 0).pixels, 3U);
+    EXPECT_EQ(cost.crossing.at(2, 0).pixels, 6U);
+    EXPECT_EQ(cost.crossing.at(1, 1).pixels, 0U);
+    const double off = delta_e_2000({50, 3, 4}, {50, 0, 0});
+    EXPECT_NEAR(cost.crossing.at(1, 0).de00, 3 * off, 1e-3);
+    EXPECT_NEAR(cost.crossing.at(1, 0).worst, off, 1e-4);
+    const std::vector<PixelCost> sums = cost.crossing.sums();
+    EXPECT_EQ(sums[0].pixels, 9U);
+    EXPECT_EQ(sums[1].pixels, 1U);
+    const PaletteCost plain = measure_cost(table, fewer);
+    EXPECT_EQ(plain.mse, cost.mse);
+    EXPECT_EQ(plain.max_de00, cost.max_de00);
+    EXPECT_EQ(plain.pixels, cost.pixels);
+}
+
 TEST(MeasureCost, AddsTheScatterOfCells) {
     ColourTable table = small_table();
     table.cell_de = 0.25;

@@ -76,6 +76,13 @@ Study study_of(const std::string& file, const std::vector<int>& counts,
         CurvePoint point{count,       evidence(count), mse(count), 0.42 * root,
                          1.25 * root, 2.2 * root,      {}};
         if (count > 1) point.closest_pair_de00 = 60.0 / count;
+        point.label_bits = 0.8 * std::log2(count);
+        if (count <= 25) point.prediction_strength = count > 1 ? 1.4 / count : 1;
+        const bool next = std::find(counts.begin(), counts.end(), count + 1) != counts.end();
+        if (next) {
+            const auto last = static_cast<std::size_t>(count);
+            point.loss = {last, last / 2, 12'345, 0.011431, 0.75, 9.5 + root, 21 + root, 1.5, 4.25};
+        }
         study.curve.push_back(point);
         study.palettes.push_back(palette_of(count, study.picture.opaque_pixels, random));
     }

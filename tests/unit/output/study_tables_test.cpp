@@ -6,6 +6,7 @@
 #include <nlohmann/json.hpp>
 #include <set>
 
+#include "colour/notation.h"
 #include "output/curve_csv.h"
 #include "output/curve_svg.h"
 #include "output/json_text.h"
@@ -50,14 +51,33 @@ TEST(CurveCsv, HoldsTheCurve) {
     study.curve[1].max_de00 = 0.00004;
     const Rows rows = read_csv(curve_csv(study));
     ASSERT_EQ(rows.size(), 13U);
-    EXPECT_EQ(rows[0], (std::vector<std::string>{"count", "evidence_mse", "mse", "mean_de00",
-                                                 "p95_de00", "max_de00", "closest_pair_de00"}));
+    EXPECT_EQ(rows[0],
+              (std::vector<std::string>{
+                  "count", "evidence_mse", "mse", "mean_de00", "p95_de00", "max_de00",
+                  "closest_pair_de00", "label_bits", "prediction_strength", "lost", "lost_hex",
+                  "into", "into_hex", "lost_share", "into_share", "lost_mean_de00", "lost_max_de00",
+                  "lost_mean_de00_before", "lost_max_de00_before"}));
     EXPECT_EQ(rows[1][0], "1");
     EXPECT_EQ(rows[1][6], "") << "one colour has no pair";
     EXPECT_EQ(rows[2][1], "1234567.123457");
     EXPECT_EQ(rows[2][5], "0.0000");
     EXPECT_EQ(rows[2][6], "30.0000");
     EXPECT_EQ(rows[12][2], "0.000000");
+    EXPECT_EQ(rows[4][7], "1.6000");
+    EXPECT_EQ(rows[4][8], "0.350000");
+    EXPECT_EQ(read_csv(curve_csv(fixtures::many()))[30][8], "") << "not measured";
+    const Swatch& lost = study.palettes[4].swatches[4];
+    const Swatch& into = study.palettes[3].swatches[2];
+    EXPECT_EQ(rows[4][9], lost.name);
+    EXPECT_EQ(rows[4][10], hex(lost.srgb));
+    EXPECT_EQ(rows[4][11], into.name);
+    EXPECT_EQ(rows[4][12], hex(into.srgb));
+    EXPECT_EQ(rows[4][13], "0.011431");
+    EXPECT_EQ(rows[4][14], "0.750000");
+    EXPECT_EQ(rows[4][17], "1.5000");
+    EXPECT_EQ(rows[4][18], "4.2500");
+    for (std::size_t i = 9; i < 19; ++i) EXPECT_EQ(rows[12][i], "") << "no more was measured";
+    for (const auto& row : rows) EXPECT_EQ(row.size(), rows[0].size());
 }
 
 TEST(SwatchCsv, HoldsThePaletteOfTheCount) {
@@ -103,11 +123,35 @@ TEST(StudyJson, HasTheKeysInTheirOrder) {
                                         "dpi", "opaque_pixels", "distinct_colours"}));
     EXPECT_EQ(keys_of(json["curve"][3]),
               (std::vector<std::string>{"count", "evidence_mse", "mse", "mean_de00", "p95_de00",
-                                        "max_de00", "closest_pair_de00"}));
+                                        "max_de00", "closest_pair_de00", "label_bits",
+                                        "prediction_strength", "loss"}));
+    EXPECT_EQ(
+        keys_of(json["curve"][3]["loss"]),
+        (std::vector<std::string>{"colour", "into", "share", "pixels", "into_share", "mean_de00",
+                                  "max_de00", "mean_de00_before", "max_de00_before"}));
+    EXPECT_EQ(keys_of(json["curve"][3]["loss"]["colour"]),
+              (std::vector<std::string>{"index", "name", "hex"}));
     EXPECT_EQ(keys_of(json["proposal"]),
               (std::vector<std::string>{"count", "range", "confidence", "sentence", "votes"}));
     EXPECT_EQ(keys_of(json["palettes"][6]["colours"][0]),
               (std::vector<std::string>{"name", "hex", "lab", "share", "pixels"}));
+}
+
+TEST(StudyJson, NamesWhatIsLost) {
+    const Study study = fixtures::far_count();
+    const Json json = Json::parse(study_json(study, ""));
+    const Json& loss = json["curve"][5]["loss"];
+    EXPECT_EQ(loss["colour"]["index"], 6);
+    EXPECT_EQ(loss["colour"]["name"], json["palettes"][6]["colours"][6]["name"]);
+    EXPECT_EQ(loss["colour"]["hex"], json["palettes"][6]["colours"][6]["hex"]);
+    EXPECT_EQ(loss["into"]["index"], 3);
+    EXPECT_EQ(loss["into"]["hex"], json["palettes"][5]["colours"][3]["hex"]);
+    EXPECT_EQ(loss["pixels"], 12345);
+    EXPECT_EQ(loss["into_share"], 0.75);
+    EXPECT_EQ(loss["mean_de00_before"], 1.5);
+    EXPECT_EQ(loss["max_de00_before"], 4.25);
+    EXPECT_TRUE(json["curve"][24]["loss"].is_null()) << "26 colours were not measured";
+    EXPECT_TRUE(json["curve"][25]["loss"].is_null());
 }
 
 TEST(StudyJson, HoldsRoundedValues) {
@@ -137,6 +181,9 @@ TEST(StudyJson, WhatIsUnknownIsNull) {
     EXPECT_TRUE(json["evidence"]["noise"].is_null());
     EXPECT_TRUE(json["proposal"]["votes"][0]["count"].is_null());
     EXPECT_TRUE(json["curve"][0]["closest_pair_de00"].is_null());
+    const Json many = Json::parse(study_json(fixtures::many(), ""));
+    EXPECT_TRUE(many["curve"][29]["prediction_strength"].is_null());
+    EXPECT_EQ(many["curve"][3]["prediction_strength"], 0.35);
     Study study = fixtures::single_colour();
     study.labels = {};
     study.curve[0].mse = std::numeric_limits<double>::quiet_NaN();
