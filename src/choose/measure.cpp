@@ -138,4 +138,13 @@ void measure_stability(Study& study, const Sweep& sweep, std::uint64_t seed) {
     for (std::size_t i = 0; i < counts; ++i) study.curve[i].prediction_strength = strengths[i];
 }
 
+double mse_with(const WeightedPoints& points, const SweepOptions& options, int count,
+                const ColourTable& table, const ColourSpace& written_space) {
+    const Sweep sweep = sweep_counts(points, options);
+    const auto found = std::find_if(sweep.centres.begin(), sweep.centres.end(),
+                                    [count](const Centres& c) { return c.count == count; });
+    const Centres& centres = found != sweep.centres.end() ? *found : sweep.centres.back();
+    return measure_cost(table, written_of(centres, written_space).lab).mse;
+}
+
 }  // namespace tincture

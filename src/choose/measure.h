@@ -13,6 +13,11 @@ namespace tincture {
 void measure_curve(Study& study, const ColourTable& table, const Sweep& sweep,
                    const ColourSpace& written_space);
 
+// The mean squared dE76, over every pixel of the table, of the palette of `count` colours that
+// other points lead to, with the same options of the sweep.
+[[nodiscard]] double mse_with(const WeightedPoints& points, const SweepOptions& options, int count,
+                              const ColourTable& table, const ColourSpace& written_space);
+
 // Halves the evidence some times and fills `prediction_strength` of the first counts of the curve.
 // Needs the curve of the same sweep, and the evidence's noise.
 void measure_stability(Study& study, const Sweep& sweep, std::uint64_t seed = 1);

@@ -82,9 +82,16 @@ struct LabelFacts {
     double tidied_share = 0;     // part of the opaque pixels that tidying moved to another label
 };
 
+// Small colours that were given more weight than their area.
+struct AccentFacts {
+    std::vector<Lab> colours;
+    double mse_by_area = 0;  // mean squared dE76 at the count used, had areas alone been weighed
+};
+
 struct Study {
     PictureFacts picture;
     EvidenceFacts evidence;
+    std::optional<AccentFacts> accents;  // unset: areas alone were weighed
     double tolerance = 3.0;  // CIEDE2000 at the 95th percentile
     int at_least = 2;        // the range that is proposed from and listed
     int at_most = 24;

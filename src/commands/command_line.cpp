@@ -48,8 +48,8 @@ std::filesystem::path file_name(const std::string& option, const std::string& te
 // Values as they were typed: CLI11 sorts them, the functions above judge them.
 struct Typed {
     std::string picture;
-    std::optional<std::string> out, threads, count, at_least, at_most, tolerance, evidence, profile,
-        max_pixels;
+    std::optional<std::string> out, threads, count, at_least, at_most, tolerance, evidence,
+        emphasis, profile, max_pixels;
     std::vector<std::string> keep;
     CommonOptions common;  // only its flags
 };
@@ -86,6 +86,11 @@ void add_choosing_options(CLI::App& command, Typed& typed) {
                     "such (flat, the default), or all of them alike (all)")
         ->option_text("WHICH");
     command
+        .add_option("--emphasis", typed.emphasis,
+                    "What to look after: areas alone (area), small colours that stand apart as "
+                    "well (accent), or these where they do so for certain (auto, the default)")
+        ->option_text("WHAT");
+    command
         .add_option("--keep", typed.keep,
                     "A colour that must be in the palette: #rrggbb, a CSS name or "
                     "\"lab(L a b)\" (D50); may be repeated")
@@ -101,6 +106,13 @@ CommonOptions common_options(const Typed& typed) {
         options.threads = static_cast<int>(whole_number("--threads", *typed.threads, 1, 1024));
     }
     return options;
+}
+
+Emphasis emphasis_of(const std::string& text) {
+    if (text == "area") return Emphasis::area;
+    if (text == "accent") return Emphasis::accent;
+    if (text == "auto") return Emphasis::automatic;
+    refuse("--emphasis " + text + ": give area, accent or auto");
 }
 
 ChoosingOptions choosing_options(const Typed& typed) {
@@ -126,7 +138,9 @@ ChoosingOptions choosing_options(const Typed& typed) {
             refuse("--evidence " + *typed.evidence + ": give flat or all");
         }
         options.every_pixel_alike = *typed.evidence == "all";
+        if (options.every_pixel_alike) options.emphasis = Emphasis::area;
     }
+    if (typed.emphasis) options.emphasis = emphasis_of(*typed.emphasis);
     for (const std::string& text : typed.keep) options.keep.push_back(parse_colour(text));
     const int most = options.count.value_or(options.at_most);
     if (options.keep.size() > static_cast<std::size_t>(most)) {

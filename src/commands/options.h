@@ -7,6 +7,7 @@
 #include <string>
 #include <vector>
 
+#include "evidence/accents.h"
 #include "colour/notation.h"
 
 namespace tincture {
@@ -27,6 +28,7 @@ struct ChoosingOptions {
     int at_most = 24;
     double tolerance = 3;
     bool every_pixel_alike = false;  // not only flat areas are evidence
+    Emphasis emphasis = Emphasis::automatic;
     std::vector<ColourText> keep;
 };
 

@@ -8,6 +8,7 @@
 #include "cluster/sweep.h"
 #include "commands/progress_bar.h"
 #include "commands/summary.h"
+#include "evidence/accents.h"
 #include "evidence/evidence.h"
 #include "histogram/colour_table.h"
 #include "label/label_map.h"
@@ -105,6 +106,13 @@ SweepOptions sweep_options(const ChoosingOptions& choosing, Centres kept, Progre
     return options;
 }
 
+AccentFacts accent_facts(const std::vector<Peak>& accents, double mse_by_area) {
+    AccentFacts facts;
+    for (const Peak& accent : accents) facts.colours.push_back({accent.L, accent.a, accent.b});
+    facts.mse_by_area = mse_by_area;
+    return facts;
+}
+
 struct NamedFile {
     std::string name;
     std::string bytes;
@@ -187,17 +195,23 @@ void run_reduce(const ReduceOptions& options, const Terminal& terminal) {
                                   ? equal_evidence(table)
                                   : weigh_evidence(picture, table, space);
     study.evidence = evidence.facts;
+    const std::vector<Peak> accents = accents_of(evidence, options.choosing.emphasis);
 
     progress.stage("clustering", 0.5, 0.8);
-    const Sweep sweep = sweep_counts(
-        evidence.points,
-        sweep_options(options.choosing, kept_centres(options.choosing.keep, written), progress));
+    const SweepOptions how =
+        sweep_options(options.choosing, kept_centres(options.choosing.keep, written), progress);
+    const Sweep sweep = accents.empty() ? sweep_counts(evidence.points, how)
+                                        : sweep_counts(emphasised(evidence.points, accents), how);
 
     progress.stage("measuring", 0.8, 0.9);
     measure_curve(study, table, sweep, written);
     measure_stability(study, sweep);
     study.proposal = propose(study);
     settle_count(study, options.choosing.count, !picture.opaque.empty());
+    if (!accents.empty()) {
+        study.accents =
+            accent_facts(accents, mse_with(evidence.points, how, study.count, table, written));
+    }
 
     progress.stage("writing", 0.9, 1);
     LabelFacts labels;

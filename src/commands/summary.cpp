@@ -58,9 +58,23 @@ std::string proposal_lines(const Study& study, const std::optional<int>& asked,
         proposal.low == proposal.high
             ? "this one alone"
             : std::to_string(proposal.low) + " to " + std::to_string(proposal.high);
-    return text + paragraph("Counts that can be defended: " + range + ". Confidence: " +
-                                fixed(proposal.confidence, 1) + " of 1, a first guess.",
+    return text + paragraph("Counts that can be defended: " + range +
+                                ". Confidence: " + fixed(proposal.confidence, 1) +
+                                " of 1, as often as such evidence was right on drawn pictures.",
                             terminal);
+}
+
+std::string accent_words(const Study& study, const Terminal& terminal) {
+    if (!study.accents) return "";
+    const std::size_t n = study.accents->colours.size();
+    const std::string subject =
+        n == 1 ? "One small colour that stands apart was given more weight"
+               : std::to_string(n) + " small colours that stand apart were given more weight";
+    return paragraph(subject + " than by area: the mean squared error over the picture is " +
+                         fixed(curve_at(study, study.count).mse, 1) + " instead of " +
+                         fixed(study.accents->mse_by_area, 1) +
+                         " (--emphasis area leaves them be).",
+                     terminal);
 }
 
 std::string swatch_line(const Swatch& swatch, const Terminal& terminal) {
@@ -252,8 +266,9 @@ std::string file_lines(const Study& study, const Terminal& terminal, const std::
 std::string summary(const Study& study, const std::optional<int>& asked, const Terminal& terminal,
                     const std::string& folder) {
     return picture_lines(study, terminal) + "\n" + proposal_lines(study, asked, terminal) + "\n" +
-           swatch_lines(study, terminal) + "\n" + curve_lines(study, terminal) + "\n" +
-           step_lines(study, terminal) + file_lines(study, terminal, folder);
+           swatch_lines(study, terminal) + accent_words(study, terminal) + "\n" +
+           curve_lines(study, terminal) + "\n" + step_lines(study, terminal) +
+           file_lines(study, terminal, folder);
 }
 
 }  // namespace tincture

@@ -9,13 +9,6 @@ namespace {
 
 constexpr int shifts = 4;  // towards the mean of what is near
 
-double squared_distance(const WeightedPoints& points, std::size_t i, const Peak& peak) {
-    const double L = static_cast<double>(points.plane(0)[i]) - peak.L;
-    const double a = static_cast<double>(points.plane(1)[i]) - peak.a;
-    const double b = static_cast<double>(points.plane(2)[i]) - peak.b;
-    return L * L + a * a + b * b;
-}
-
 // Moves a peak to the mean of the free points around it (mean shift; Fukunaga, Hostetler 1975, IEEE
 // Trans. Information Theory 21:32-40) and weighs it.
 void settle_peak(const WeightedPoints& points, const std::vector<bool>& taken, double radius,
@@ -38,6 +31,13 @@ void settle_peak(const WeightedPoints& points, const std::vector<bool>& taken, d
 }
 
 }  // namespace
+
+double squared_distance(const WeightedPoints& points, std::size_t i, const Peak& peak) {
+    const double L = static_cast<double>(points.plane(0)[i]) - peak.L;
+    const double a = static_cast<double>(points.plane(1)[i]) - peak.a;
+    const double b = static_cast<double>(points.plane(2)[i]) - peak.b;
+    return L * L + a * a + b * b;
+}
 
 std::vector<Peak> find_peaks(const WeightedPoints& points, double radius, double least,
                              std::size_t most) {

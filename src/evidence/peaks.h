@@ -23,6 +23,10 @@ struct Peak {
 [[nodiscard]] std::vector<Peak> find_peaks(const WeightedPoints& points, double radius,
                                            double least, std::size_t most);
 
+// dE76, squared, of a point (three dimensions) from a peak.
+[[nodiscard]] double squared_distance(const WeightedPoints& points, std::size_t i,
+                                      const Peak& peak);
+
 // The place in `peaks` of the one nearest to a colour in the steps of a LabBand, peaks.size() where
 // none is within `reach` (dE76).
 [[nodiscard]] std::size_t nearest_peak(const std::vector<Peak>& peaks, const LabSteps& colour,

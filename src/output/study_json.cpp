@@ -4,6 +4,7 @@
 #include <optional>
 
 #include "colour/notation.h"
+#include "evidence/accents.h"
 #include "output/json_text.h"
 #include "support/format.h"
 
@@ -45,6 +46,20 @@ Json picture_json(const PictureFacts& picture) {
     if (picture.colour_cell_de)
         json["colour_cell_de"] = rounded(*picture.colour_cell_de, de_decimals);
     return json;
+}
+
+Json lab_json(const Lab& lab) {
+    return Json::array(
+        {rounded(lab.L, lab_decimals), rounded(lab.a, lab_decimals), rounded(lab.b, lab_decimals)});
+}
+
+Json accents_json(const Study& study) {
+    if (!study.accents) return nullptr;
+    Json labs = Json::array();
+    for (const Lab& lab : study.accents->colours) labs.push_back(lab_json(lab));
+    return {{"labs", labs},
+            {"weight_each", accent_share},
+            {"mse_by_area", rounded(study.accents->mse_by_area, mse_decimals)}};
 }
 
 Json place_json(const Palette& palette, std::size_t place) {
@@ -99,9 +114,7 @@ Json proposal_json(const Proposal& proposal) {
 Json swatch_json(const Swatch& swatch) {
     Json json = {{"name", swatch.name}, {"hex", hex(swatch.srgb)}};
     if (swatch.hex_de00) json["hex_de00"] = rounded(*swatch.hex_de00, de_decimals);
-    json["lab"] =
-        Json::array({rounded(swatch.lab.L, lab_decimals), rounded(swatch.lab.a, lab_decimals),
-                     rounded(swatch.lab.b, lab_decimals)});
+    json["lab"] = lab_json(swatch.lab);
     json["share"] = rounded(swatch.share, share_decimals);
     json["pixels"] = swatch.pixels;
     if (swatch.kept) json["kept"] = true;
@@ -134,7 +147,8 @@ std::string study_json(const Study& study, std::string_view version) {
                        {"evidence",
                         {{"kind", known(study.evidence.kind)},
                          {"flat_share", known(study.evidence.flat_share, share_decimals)},
-                         {"noise", known(study.evidence.noise, de_decimals)}}},
+                         {"noise", known(study.evidence.noise, de_decimals)},
+                         {"accents", accents_json(study)}}},
                        {"tolerance", rounded(study.tolerance, de_decimals)},
                        {"curve", curve_json(study)},
                        {"proposal", proposal_json(study.proposal)},

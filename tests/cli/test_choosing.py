@@ -212,3 +212,35 @@ def test_what_is_below_full_transparency_changes_nothing(tmp_path):
         folder.mkdir()
         pictures.save_png(folder / "p.png", pictures.with_alpha(content, alpha))
     assert contents(reduce("p.png", cwd=one)) == contents(reduce("p.png", cwd=two))
+
+
+def spot_in_a_landscape():
+    """Greys and greens under noise, with a red disc on 0.3 % of the pixels."""
+    pixels = pictures.noisy(200, 150, seed=12, spread=6.0) // 3 + np.array([70, 90, 60], np.uint8)
+    y, x = np.mgrid[:150, :200]
+    pixels[(x - 120) ** 2 + (y - 60) ** 2 < 29] = (214, 22, 40)
+    return pixels
+
+
+def test_emphasis_keeps_a_small_colour_that_stands_apart(tmp_path):
+    picture = pictures.save_png(tmp_path / "spot.png", spot_in_a_landscape())
+    spot = colour_maths.lab_of_hex("#d61628")
+    nearest = {}
+    for emphasis in ("area", "accent", "auto"):
+        study = study_of(reduce(picture, "--count", "3", "--emphasis", emphasis, cwd=tmp_path, out=emphasis))
+        check_schema(study)
+        palette = np.array([colour["lab"] for colour in palette_of(study)])
+        nearest[emphasis] = float(np.min(colour_maths.ciede2000(np.asarray(spot)[None, :], palette)))
+        accents = study["evidence"]["accents"]
+        assert (accents is None) == (emphasis == "area")
+        if accents:
+            assert len(accents["labs"]) == 1
+            mse = next(point["mse"] for point in study["curve"] if point["count"] == 3)
+            assert mse >= accents["mse_by_area"] > 0
+    assert nearest["accent"] < 5 and nearest["auto"] < 5 and nearest["area"] > 10, nearest
+
+
+def test_an_unknown_emphasis_is_refused(tmp_path, noisy_png):
+    result = run("reduce", noisy_png, "--emphasis", "loud", cwd=tmp_path)
+    assert result.status == 2
+    assert "--emphasis loud" in result.err

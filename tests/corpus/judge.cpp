@@ -6,9 +6,11 @@
 #include "choose/proposal.h"
 #include "cluster/sweep.h"
 #include "colour/colour_space.h"
+#include "evidence/accents.h"
 #include "evidence/evidence.h"
 #include "histogram/colour_table.h"
 #include "label/label_map.h"
+#include "palette/written_colours.h"
 
 namespace tincture::corpus {
 namespace {
@@ -57,8 +59,20 @@ Judgement judge(const Picture& picture, std::span<const Rgb8> inks) {
     return judgement;
 }
 
-std::vector<Rgb8> accent_palette(const Picture&, int) {
-    return {};
+std::vector<Rgb8> accent_palette(const Picture& picture, int count) {
+    const ColourSpace space = ColourSpace::standard(ColourModel::rgb);
+    const ColourTable table = count_colours(picture, space);
+    const Evidence evidence = weigh_evidence(picture, table, space);
+    SweepOptions options;
+    options.max_count = count;
+    const Sweep sweep =
+        sweep_counts(emphasised(evidence.points, accents_of(evidence, Emphasis::accent)), options);
+    std::vector<Lab> labs;
+    for (int k = 0; k < sweep.centres.back().count; ++k) {
+        const float* row = sweep.centres.back().row(k);
+        labs.push_back({row[0], row[1], row[2]});
+    }
+    return written_colours(labs, space);
 }
 
 }  // namespace tincture::corpus

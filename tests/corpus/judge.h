@@ -25,7 +25,7 @@ struct Judgement {
 // the pipeline. One thread (see set_thread_count()).
 [[nodiscard]] Judgement judge(const Picture& picture, std::span<const Rgb8> inks);
 
-// The swatches of a palette of `count` with --emphasis accent; empty until there is such an option.
+// The swatches of a palette of `count` with --emphasis accent.
 [[nodiscard]] std::vector<Rgb8> accent_palette(const Picture& picture, int count);
 
 }  // namespace tincture::corpus
