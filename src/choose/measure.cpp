@@ -7,6 +7,7 @@
 #include "choose/count_loss.h"
 #include "choose/error_curve.h"
 #include "choose/prediction_strength.h"
+#include "palette/source_colours.h"
 #include "palette/written_colours.h"
 #include "support/cancel.h"
 #include "support/parallel.h"
@@ -25,9 +26,10 @@ std::vector<Lab> labs_of(const Centres& centres) {
     return labs;
 }
 
-WrittenColours written_of(const Centres& centres, const ColourSpace& space) {
+WrittenColours written_of(const Centres& centres, int kept, const ColourTable& table,
+                          const ColourSpace& space) {
     WrittenColours written;
-    written.rgb = written_colours(labs_of(centres), space);
+    written.rgb = written_colours(moved_to_source(labs_of(centres), kept, table), space);
     for (const Rgb8 colour : written.rgb) written.lab.push_back(space.lab_of(colour));
     return written;
 }
@@ -90,7 +92,7 @@ void measure_curve(Study& study, const ColourTable& table, const Sweep& sweep,
     study.palettes.assign(counts, {});
     std::vector<Measured> measured(counts);
     parallel_for(counts, [&](std::size_t i) {
-        measured[i].written = written_of(sweep.centres[i], written_space);
+        measured[i].written = written_of(sweep.centres[i], sweep.kept, table, written_space);
     });
     const auto has_next = [&](std::size_t at) {
         return at + 1 < counts && sweep.centres[at + 1].count == sweep.centres[at].count + 1;
@@ -144,7 +146,7 @@ double mse_with(const WeightedPoints& points, const SweepOptions& options, int c
     const auto found = std::find_if(sweep.centres.begin(), sweep.centres.end(),
                                     [count](const Centres& c) { return c.count == count; });
     const Centres& centres = found != sweep.centres.end() ? *found : sweep.centres.back();
-    return measure_cost(table, written_of(centres, written_space).lab).mse;
+    return measure_cost(table, written_of(centres, sweep.kept, table, written_space).lab).mse;
 }
 
 }  // namespace tincture
