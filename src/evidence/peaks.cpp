@@ -26,7 +26,10 @@ void settle_peak(const WeightedPoints& points, const std::vector<bool>& taken, d
             b += points.weight[i] * static_cast<double>(points.plane(2)[i]);
         }
         if (weight <= 0) return;
-        peak = {L / weight, a / weight, b / weight, weight, 0};
+        const Peak moved = {L / weight, a / weight, b / weight, weight, 0};
+        const bool settled = moved.L == peak.L && moved.a == peak.a && moved.b == peak.b;
+        peak = moved;
+        if (settled) return;
     }
 }
 
