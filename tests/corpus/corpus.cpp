@@ -25,7 +25,7 @@ struct Options {
     std::uint64_t last_seed = 1'000'000'000;
     std::vector<Kind> kinds{all_kinds().begin(), all_kinds().end()};
     std::vector<State> states{all_states().begin(), all_states().end()};
-    std::uint64_t per_state = 0;  // 0: 200 posters and 60 of each other kind
+    std::uint64_t per_state = 0;  // 0: 200 posters, as many placards, 60 of each other kind
     bool list_misses = false;
     std::filesystem::path write;
 };
@@ -169,7 +169,8 @@ Results run_all(const Options& options) {
     };
     std::vector<Task> tasks;
     for (const Kind kind : options.kinds) {
-        const std::uint64_t usual = kind == Kind::poster ? posters_a_state : others_a_state;
+        const bool poster = kind == Kind::poster || kind == Kind::placard;
+        const std::uint64_t usual = poster ? posters_a_state : others_a_state;
         const std::uint64_t n = options.per_state > 0 ? options.per_state : usual;
         for (std::uint64_t i = 0; i < n && options.first_seed + i <= options.last_seed; ++i) {
             tasks.push_back({kind, options.first_seed + i});

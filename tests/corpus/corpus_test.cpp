@@ -3,6 +3,8 @@
 #include <gtest/gtest.h>
 
 #include <algorithm>
+#include <array>
+#include <cmath>
 #include <cstdlib>
 #include <map>
 #include <string>
@@ -10,6 +12,7 @@
 #include "tests/corpus/inks.h"
 #include "tests/corpus/judge.h"
 #include "tests/corpus/measures.h"
+#include "tests/corpus/outlines.h"
 #include "tests/corpus/pictures.h"
 #include "tests/corpus/wear.h"
 
@@ -67,6 +70,25 @@ TEST(Corpus, PostersKeepTheirPromise) {
     }
 }
 
+TEST(Corpus, PlacardsKeepTheirPromise) {
+    for (std::uint64_t seed = 0; seed < 12; ++seed) {
+        const Sample placard = draw_sample(Kind::placard, seed);
+        EXPECT_GE(placard.count(), 2);
+        EXPECT_LE(placard.count(), 12);
+        EXPECT_GE(closest(placard.inks), 14);
+        EXPECT_GE(*std::min_element(placard.shares.begin(), placard.shares.end()), 0.002);
+        std::vector<std::size_t> bodies(placard.inks.size(), 0);
+        for (const std::size_t at : inner_pixels(placard)) ++bodies[placard.truth[at]];
+        EXPECT_GE(*std::min_element(bodies.begin(), bodies.end()), placard.truth.size() / 1250);
+        for (const std::uint32_t side : {placard.picture.width, placard.picture.height}) {
+            EXPECT_GE(side, 400U);
+            EXPECT_LE(side, 800U);
+            EXPECT_EQ(side % 2, 0U);  // so that it is kept when enlarged from half of it
+        }
+        EXPECT_GT(tally_strokes(placard, placard.truth).strokes, 0);
+    }
+}
+
 TEST(Corpus, StrataKeepTheirPromise) {
     for (std::uint64_t seed = 0; seed < 8; ++seed) {
         const double pair = closest(draw_sample(Kind::near, seed).inks);
@@ -83,7 +105,8 @@ TEST(Corpus, StrataKeepTheirPromise) {
 
 // Away from edges a clean flat picture shows its truth.
 TEST(Corpus, TruthIsWhatIsSeen) {
-    for (const Kind kind : {Kind::poster, Kind::near, Kind::small, Kind::label, Kind::lines}) {
+    for (const Kind kind :
+         {Kind::poster, Kind::placard, Kind::near, Kind::small, Kind::label, Kind::lines}) {
         const Sample sample = draw_sample(kind, 3);
         std::size_t other = 0;
         const std::vector<std::size_t> inner = inner_pixels(sample);
@@ -108,12 +131,81 @@ TEST(Corpus, SameBytesEverywhere) {
         {Kind::small, 12217009465039514537U},  {Kind::fine, 1630850683656123651U},
         {Kind::label, 9614184865288334212U},   {Kind::lines, 4402932910991490801U},
         {Kind::screen, 11037943778387548529U}, {Kind::fade, 10606125968084921459U},
-        {Kind::photo, 11599770053625700988U},  {Kind::accent, 10033768270800819155U}};
+        {Kind::photo, 11599770053625700988U},  {Kind::accent, 10033768270800819155U},
+        {Kind::placard, 11994041729070708223U}};
     for (const auto& [kind, hash] : measured) {
         EXPECT_EQ(hash_of(draw_sample(kind, 1).picture), hash) << name_of(kind);
     }
     EXPECT_EQ(hash_of(worn(poster.picture, State::scan, 1)), 17665079323458473934U);
     EXPECT_EQ(hash_of(worn(poster.picture, State::enlarged, 1)), 1142975603845487690U);
+}
+
+double covered(const Sheet& sheet) {
+    double sum = 0;
+    for (int y = 0; y < sheet.height(); ++y) {
+        for (int x = 0; x < sheet.width(); ++x) sum += sheet.coverage(x, y, 1);
+    }
+    return sum;
+}
+
+// Twice the area is a sum over the corners (the shoelace formula).
+double area_of(const Outline& outline) {
+    double twice = 0;
+    for (std::size_t i = 0; i < outline.size(); ++i) {
+        const Point p = outline[i];
+        const Point q = outline[(i + 1) % outline.size()];
+        twice += p.x * q.y - q.x * p.y;
+    }
+    return twice / 2;
+}
+
+TEST(Sheet, AreasAreExact) {
+    for (const Shape& shape :
+         {cog_shape({30.3, 28.7}, 25, 9, 0.13), ring_shape({31, 29}, 22.2, 7.7),
+          leaf_shape({9.1, 12.6}, 44, 18, 0.07)}) {
+        Sheet sheet(60, 56, 2, 0);
+        sheet.paint(shape, 1);
+        double area = 0;
+        for (const Outline& outline : shape) area += area_of(outline);
+        EXPECT_NEAR(covered(sheet), std::abs(area), 0.001);
+    }
+}
+
+// The slow way: 64 x 64 places in each pixel, against a triangle that hangs over three borders.
+TEST(Sheet, EachPixelsPartIsThatOfManyPlaces) {
+    const std::array<Point, 3> corners = {{{-4.2, 3.1}, {15.7, -2.4}, {9.3, 13.9}}};
+    Sheet sheet(12, 10, 2, 0);
+    sheet.paint({{corners.begin(), corners.end()}}, 1);
+    constexpr int fine = 64;
+    for (int y = 0; y < 10; ++y) {
+        for (int x = 0; x < 12; ++x) {
+            int inside = 0;
+            for (int i = 0; i < fine * fine; ++i) {
+                const Point at{x + (i % fine + 0.5) / fine, y + (i / fine + 0.5) / fine};
+                bool all = true;
+                for (std::size_t k = 0; k < 3; ++k) {
+                    const Point p = corners[k];
+                    const Point q = corners[(k + 1) % 3];
+                    all = all && (q.x - p.x) * (at.y - p.y) > (q.y - p.y) * (at.x - p.x);
+                }
+                inside += all ? 1 : 0;
+            }
+            EXPECT_NEAR(sheet.coverage(x, y, 1), inside / double{fine * fine}, 0.01) << x << y;
+        }
+    }
+}
+
+TEST(Sheet, MixesLight) {
+    // From memory: half the light of white is 188 in sRGB; 0.2140 is the light of half of it.
+    EXPECT_NEAR(light_of_encoded(0.5), 0.21404, 0.00001);
+    EXPECT_NEAR(light_of_encoded(1), 1, 1e-14);
+    Sheet sheet(3, 1, 2, 0);
+    sheet.paint(box_shape({1.5, 0, 9, 1}), 1);
+    const std::array<Rgb8, 2> inks = {{{0, 0, 7}, {255, 255, 7}}};
+    const Picture picture = sheet.render(inks);
+    const std::vector<int> seen(picture.samples8.data(), picture.samples8.data() + 9);
+    EXPECT_EQ(seen, (std::vector<int>{0, 0, 7, 188, 188, 7, 255, 255, 7}));
+    EXPECT_EQ(sheet.largest_inks(), (std::vector<std::uint8_t>{0, 0, 1}));
 }
 
 Sample flat(std::uint32_t width, std::uint32_t height, Rgb8 colour) {

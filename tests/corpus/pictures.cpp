@@ -5,10 +5,13 @@
 namespace tincture::corpus {
 namespace {
 
-constexpr std::array kinds = {Kind::poster, Kind::near,   Kind::small, Kind::fine,  Kind::label,
-                              Kind::lines,  Kind::screen, Kind::fade,  Kind::photo, Kind::accent};
-constexpr std::array names = {"poster", "near",   "small", "fine",  "label",
-                              "lines",  "screen", "fade",  "photo", "accent"};
+// In the order of the report.
+constexpr std::array kinds = {Kind::poster, Kind::placard, Kind::near,  Kind::small,
+                              Kind::fine,   Kind::label,   Kind::lines, Kind::screen,
+                              Kind::fade,   Kind::photo,   Kind::accent};
+// In the order of Kind.
+constexpr std::array names = {"poster", "near", "small", "fine",   "label",  "lines",
+                              "screen", "fade", "photo", "accent", "placard"};
 
 Sample draw(Kind kind, Random& random) {
     switch (kind) {
@@ -24,6 +27,8 @@ Sample draw(Kind kind, Random& random) {
             return draw_photo(random, false);
         case Kind::accent:
             return draw_photo(random, true);
+        case Kind::placard:
+            return draw_placard(random);
         default:
             return draw_poster(random, kind);
     }

@@ -14,16 +14,17 @@
 namespace tincture::corpus {
 
 enum class Kind {
-    poster,  // 2 to 12 inks at least 14 CIEDE2000 apart, shapes and lettering
-    near,    // a poster with one or two pairs of inks 5 to 14 CIEDE2000 apart
-    small,   // a poster with one ink on 0.02 to 0.2 % of its area
-    fine,    // a poster with lettering of 1 to 2 pixels
-    label,   // inks and flat tints of them
-    lines,   // outlines of 1 to 3 pixels and hatching
-    screen,  // flat panels, rules and small text
-    fade,    // flat art with fades and soft shadows: its count is that of the flat inks
-    photo,   // photograph-like: no count is natural
-    accent,  // the same with a planted colour on 0.3 % of the area, far from all others
+    poster,   // 2 to 12 inks at least 14 CIEDE2000 apart, shapes and lettering
+    near,     // a poster with one or two pairs of inks 5 to 14 CIEDE2000 apart
+    small,    // a poster with one ink on 0.02 to 0.2 % of its area
+    fine,     // a poster with lettering of 1 to 2 pixels
+    label,    // inks and flat tints of them
+    lines,    // outlines of 1 to 3 pixels and hatching
+    screen,   // flat panels, rules and small text
+    fade,     // flat art with fades and soft shadows: its count is that of the flat inks
+    photo,    // photograph-like: no count is natural
+    accent,   // the same with a planted colour on 0.3 % of the area, far from all others
+    placard,  // a poster by another hand: other shapes, sizes and layouts, edges mixed as light
 };
 
 [[nodiscard]] std::span<const Kind> all_kinds();
@@ -34,7 +35,7 @@ struct Sample {
     std::uint64_t seed = 0;
     Picture picture;                     // 8-bit sRGB without a profile
     std::vector<Rgb8> inks;              // empty where no count is natural
-    std::vector<std::uint8_t> truth;     // for each pixel the ink at its centre
+    std::vector<std::uint8_t> truth;     // for each pixel the ink at its centre; placard: of most
     std::vector<double> shares;          // for each ink its part of `truth`
     std::vector<std::uint16_t> strokes;  // for each pixel the stroke of two pixels it is in, or 0
     std::optional<Rgb8> accent;
@@ -53,6 +54,7 @@ struct Sample {
 [[nodiscard]] Sample draw_screen(Random& random);
 [[nodiscard]] Sample draw_fade(Random& random);
 [[nodiscard]] Sample draw_photo(Random& random, bool planted_accent);
+[[nodiscard]] Sample draw_placard(Random& random);
 
 // The part of the truth of each of `n` inks.
 [[nodiscard]] std::vector<double> shares_of(std::span<const std::uint8_t> truth, std::size_t n);

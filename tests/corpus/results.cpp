@@ -160,13 +160,11 @@ std::optional<int> proposed(const Result& r) {
     return r.proposal.count;
 }
 
-}  // namespace
-
-void print_summary(std::ostream& out, const Results& results) {
+void print_summary_of(std::ostream& out, const Results& results, Kind kind,
+                      const std::string& title) {
     const std::vector<State> states = states_of(results);
     const auto of_state = [&](State state) {
-        return picked(results,
-                      [&](const Result& r) { return r.kind == Kind::poster && r.state == state; });
+        return picked(results, [&](const Result& r) { return r.kind == kind && r.state == state; });
     };
     if (states.empty() || of_state(states.front()).empty()) return;
     const std::array<std::pair<const char*, Cell>, 6> rows = {{
@@ -182,7 +180,7 @@ void print_summary(std::ostream& out, const Results& results) {
         {"what colour alone could keep of them",
          [](const auto& found) { return stroke_cell(found, &Result::strokes_at_best); }},
     }};
-    out << "## Posters, " << of_state(states.front()).size() << " a state\n\n";
+    out << "## " << title << ", " << of_state(states.front()).size() << " a state\n\n";
     print_head(out, "", states);
     for (const auto& [name, cell] : rows) {
         out << "| " << name << " |";
@@ -190,6 +188,13 @@ void print_summary(std::ostream& out, const Results& results) {
         out << '\n';
     }
     out << '\n';
+}
+
+}  // namespace
+
+void print_summary(std::ostream& out, const Results& results) {
+    print_summary_of(out, results, Kind::poster, "Posters");
+    print_summary_of(out, results, Kind::placard, "Placards: posters by another hand");
 }
 
 void print_counts(std::ostream& out, const Results& results) {

@@ -36,7 +36,7 @@ struct Result {
 
 using Results = std::vector<Result>;
 
-// The figures of posters that are quoted, in one table.
+// The figures of posters that are quoted, in one table, and the same of placards.
 void print_summary(std::ostream& out, const Results& results);
 
 // Markdown. Each prints nothing where the results hold nothing for it.
