@@ -49,7 +49,7 @@ std::filesystem::path file_name(const std::string& option, const std::string& te
 struct Typed {
     std::string picture;
     std::optional<std::string> out, threads, count, at_least, at_most, tolerance, evidence,
-        emphasis, profile, max_pixels;
+        emphasis, profile, speck, max_pixels;
     std::vector<std::string> keep;
     CommonOptions common;  // only its flags
 };
@@ -157,6 +157,10 @@ ReduceOptions reduce_options(const Typed& typed) {
     options.choosing = choosing_options(typed);
     options.picture = typed.picture;
     if (typed.profile) options.profile = file_name("--profile", *typed.profile);
+    if (typed.speck) {
+        options.speck =
+            static_cast<std::uint32_t>(whole_number("--speck", *typed.speck, 0, 1'000'000'000));
+    }
     if (typed.max_pixels) {
         options.max_pixels = whole_number("--max-pixels", *typed.max_pixels, 1, 4'000'000'000);
     }
@@ -223,6 +227,10 @@ CommandLine read_command_line(int argc, const char* const* argv) {
         ->add_option("--profile", typed.profile,
                      "ICC profile for a picture that has none; CMYK needs one")
         ->option_text("FILE");
+    reduce
+        ->add_option("--speck", typed.speck,
+                     "Regions of fewer pixels join a neighbour; default: 3 in flat art, else 0")
+        ->option_text("PX");
     reduce
         ->add_option("--max-pixels", typed.max_pixels,
                      "Refuse pictures of more pixels; default: 500000000")

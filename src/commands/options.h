@@ -37,6 +37,7 @@ struct ReduceOptions {
     ChoosingOptions choosing;
     std::filesystem::path picture;
     std::optional<std::filesystem::path> profile;
+    std::optional<std::uint32_t> speck;  // pixels; unset: as the picture's kind asks for
     std::uint64_t max_pixels = 500'000'000;
 };
 

@@ -23,6 +23,7 @@
 #include "picture/picture_space.h"
 #include "picture/read.h"
 #include "picture/write_indexed_png.h"
+#include "regions/tidy_labels.h"
 #include "support/error.h"
 #include "support/parallel.h"
 #include "support/text.h"
@@ -140,13 +141,19 @@ std::vector<Rgb8> written_palette(const Palette& palette, bool transparency) {
 // Labels the pixels and stages the picture in its palette.
 LabelFacts write_reduced(OutputSet& files, const Study& study, const Picture& picture,
                          const ColourTable& table, const ColourSpace& space,
-                         const ColourSpace& written) {
+                         const ColourSpace& written, std::optional<std::uint32_t> speck) {
     const Palette& palette = palette_at(study, study.count);
-    const Samples<std::uint8_t> labels = label_pixels(picture, table, space, palette);
+    Samples<std::uint8_t> labels = label_pixels(picture, table, space, palette);
+    const std::uint64_t tidied =
+        tidy_labels(labels, picture, table, space, palette, study.evidence, speck);
+    const auto share = [&](std::uint64_t pixels) {
+        return static_cast<double>(pixels) / static_cast<double>(table.opaque_pixels);
+    };
     LabelFacts facts;
     for (const std::uint64_t n : count_labels(labels, study.count)) {
-        facts.shares.push_back(static_cast<double>(n) / static_cast<double>(table.opaque_pixels));
+        facts.shares.push_back(share(n));
     }
+    facts.tidied_share = share(tidied);
     const bool transparency = !picture.opaque.empty();
     const std::vector<Rgb8> colours = written_palette(palette, transparency);
     IndexedPicture reduced{picture.width, picture.height, labels.data(),     colours,
@@ -216,8 +223,11 @@ void run_reduce(const ReduceOptions& options, const Terminal& terminal) {
     progress.stage("writing", 0.9, 1);
     LabelFacts labels;
     std::vector<NamedFile> drawings;
-    run_both([&] { labels = write_reduced(files, study, picture, table, space, written); },
-             [&] { drawings = drawings_of(study); });
+    run_both(
+        [&] {
+            labels = write_reduced(files, study, picture, table, space, written, options.speck);
+        },
+        [&] { drawings = drawings_of(study); });
     study.labels = std::move(labels);
     for (const NamedFile& file : drawings) files.add(file.name, file.bytes);
     const std::string json = study_json(study, tincture_version);

@@ -147,4 +147,11 @@ std::vector<std::uint64_t> count_labels(const Samples<std::uint8_t>& labels, int
     return {found.begin(), found.begin() + count};
 }
 
+std::uint64_t count_differences(const Samples<std::uint8_t>& one,
+                                const Samples<std::uint8_t>& two) {
+    std::uint64_t different = 0;
+    for (std::size_t i = 0; i < one.size(); ++i) different += one[i] != two[i] ? 1 : 0;
+    return different;
+}
+
 }  // namespace tincture

@@ -20,4 +20,8 @@ namespace tincture {
 [[nodiscard]] std::vector<std::uint64_t> count_labels(const Samples<std::uint8_t>& labels,
                                                       int count);
 
+// How many pixels have another label in the second of two maps of the same size.
+[[nodiscard]] std::uint64_t count_differences(const Samples<std::uint8_t>& one,
+                                              const Samples<std::uint8_t>& two);
+
 }  // namespace tincture

@@ -217,6 +217,8 @@ def test_an_input_beside_the_output_in_its_folder_works(place):
     (("reduce", "p.png", "--tolerance", "inf"), ("--tolerance inf: ", "above 0")),
     (("reduce", "p.png", "--tolerance", "3,5"), ("--tolerance 3,5: ", "number")),
     (("reduce", "p.png", "--threads", "0"), ("--threads 0: ",)),
+    (("reduce", "p.png", "--speck", "-1"), ("--speck",)),
+    (("reduce", "p.png", "--speck", "2.5"), ("--speck 2.5: ", "whole number")),
     (("reduce", "p.png", "--max-pixels", "0"), ("--max-pixels 0: ",)),
     (("reduce", "p.png", "--max-pixels", "1e6"), ("--max-pixels 1e6: ",)),
     (("reduce", "p.png", "--keep", "#12345"), ("#12345", "#rrggbb")),
@@ -239,8 +241,8 @@ def test_wrong_command_lines(place, arguments, says):
 
 @pytest.mark.parametrize("arguments, says", [
     (("--help",), ("reduce", "--version")),
-    (("reduce", "--help"), ("--count", "--at-least", "--at-most", "--tolerance", "--keep", "--profile", "--max-pixels",
-                            "--out", "--force", "--json", "--quiet", "--threads")),
+    (("reduce", "--help"), ("--count", "--at-least", "--at-most", "--tolerance", "--keep", "--profile", "--speck",
+                            "--max-pixels", "--out", "--force", "--json", "--quiet", "--threads")),
     (("--version",), ("tincture 0.1.0\n",)),
 ])
 def test_help_and_version_go_to_standard_output(place, arguments, says):

@@ -11,6 +11,7 @@
 #include "histogram/colour_table.h"
 #include "label/label_map.h"
 #include "palette/written_colours.h"
+#include "regions/tidy_labels.h"
 
 namespace tincture::corpus {
 namespace {
@@ -46,7 +47,8 @@ Judgement judge(const Picture& picture, std::span<const Rgb8> inks) {
     if (inks.empty()) return judgement;
 
     const auto labelled = [&](const Palette& palette) {
-        const Samples<std::uint8_t> labels = label_pixels(picture, table, space, palette);
+        Samples<std::uint8_t> labels = label_pixels(picture, table, space, palette);
+        tidy_labels(labels, picture, table, space, palette, study.evidence, std::nullopt);
         return std::vector<std::uint8_t>(labels.data(), labels.data() + labels.size());
     };
     judgement.labels_of_inks = labelled(palette_of(inks, space));

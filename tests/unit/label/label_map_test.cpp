@@ -150,5 +150,16 @@ TEST(CountLabels, CountsThoseBelow) {
     EXPECT_TRUE(count_labels(Samples<std::uint8_t>(), 0).empty());
 }
 
+TEST(CountDifferences, CountsPlaces) {
+    Samples<std::uint8_t> one(300);
+    Samples<std::uint8_t> two(300);
+    for (std::size_t i = 0; i < 300; ++i) {
+        one[i] = static_cast<std::uint8_t>(i % 7);
+        two[i] = static_cast<std::uint8_t>(i % 3 == 0 ? 200 : i % 7);
+    }
+    EXPECT_EQ(count_differences(one, two), 100U);
+    EXPECT_EQ(count_differences(one, one), 0U);
+}
+
 }  // namespace
 }  // namespace tincture
