@@ -92,8 +92,8 @@ struct Study {
     PictureFacts picture;
     EvidenceFacts evidence;
     std::optional<AccentFacts> accents;  // unset: areas alone were weighed
-    double tolerance = 3.0;  // CIEDE2000 at the 95th percentile
-    int at_least = 2;        // the range that is proposed from and listed
+    double tolerance = 3.0;              // CIEDE2000 at the 95th percentile
+    int at_least = 2;                    // the range that is proposed from and listed
     int at_most = 24;
     // Counts rise; one step apart up to the end of the sweep, then perhaps the count asked for.
     std::vector<CurvePoint> curve;

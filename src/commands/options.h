@@ -7,8 +7,8 @@
 #include <string>
 #include <vector>
 
-#include "evidence/accents.h"
 #include "colour/notation.h"
+#include "evidence/accents.h"
 
 namespace tincture {
 
