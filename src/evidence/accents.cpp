@@ -3,6 +3,9 @@
 #include <algorithm>
 #include <cmath>
 #include <cstddef>
+#include <cstdint>
+#include <numeric>
+#include <unordered_map>
 #include <utility>
 
 #include "histogram/cells.h"
@@ -17,6 +20,7 @@ constexpr double per_noise = 1.5;    // or within so many times the noise
 constexpr double body_de = 10;       // what belongs to it in light and shade
 constexpr double apart_de = 25;      // what is nearer than this is not apart
 constexpr double most_share = 0.02;  // more is an area
+constexpr double block_de = 12;      // what weighs more than that together is one
 constexpr std::size_t peaks_to_try = 64;
 constexpr std::size_t most_accents = 3;
 
@@ -36,6 +40,32 @@ double weight_within(const WeightedPoints& points, const Peak& peak, double reac
     return sum;
 }
 
+// The cells that are not in the midst of an area: peaks are looked for among few.
+WeightedPoints outside_areas(const WeightedPoints& cells) {
+    const auto block = [&](std::size_t i) {
+        const auto step = [](float value) {
+            return static_cast<std::uint64_t>(std::floor(static_cast<double>(value) / block_de) +
+                                              512);
+        };
+        return step(cells.plane(0)[i]) << 40 | step(cells.plane(1)[i]) << 20 |
+               step(cells.plane(2)[i]);
+    };
+    std::unordered_map<std::uint64_t, double> weight;
+    for (std::size_t i = 0; i < cells.n; ++i) weight[block(i)] += cells.weight[i];
+    std::vector<std::size_t> few;
+    for (std::size_t i = 0; i < cells.n; ++i) {
+        if (weight[block(i)] <= most_share * cells.total_weight) few.push_back(i);
+    }
+    WeightedPoints points;
+    points.n = few.size();
+    for (int d = 0; d < 3; ++d) {
+        for (const std::size_t i : few) points.x.push_back(cells.plane(d)[i]);
+    }
+    for (const std::size_t i : few) points.weight.push_back(cells.weight[i]);
+    points.total_weight = std::accumulate(points.weight.begin(), points.weight.end(), 0.0);
+    return points;
+}
+
 }  // namespace
 
 std::vector<Peak> find_accents(const WeightedPoints& points, double noise_de, bool certain) {
@@ -43,8 +73,8 @@ std::vector<Peak> find_accents(const WeightedPoints& points, double noise_de, bo
     const WeightedPoints cells = merge_into_cells(points, cell_de);
     const double radius = std::max(gather_de, per_noise * noise_de);
     std::vector<std::pair<double, Peak>> found;
-    for (const Peak& peak :
-         find_peaks(cells, radius, limits.least_share * cells.total_weight, peaks_to_try)) {
+    for (const Peak& peak : find_peaks(outside_areas(cells), radius,
+                                       limits.least_share * cells.total_weight, peaks_to_try)) {
         const double body = weight_within(cells, peak, std::max(body_de, 2 * radius));
         if (body > most_share * cells.total_weight || peak.prominence < limits.prominence) continue;
         const double alone = body / weight_within(cells, peak, apart_de + radius);
