@@ -25,13 +25,14 @@ struct Options {
     std::uint64_t last_seed = 1'000'000'000;
     std::vector<Kind> kinds{all_kinds().begin(), all_kinds().end()};
     std::vector<State> states{all_states().begin(), all_states().end()};
-    std::uint64_t per_state = 0;  // 0: 200 posters, as many placards, 60 of each other kind
+    std::uint64_t per_state = 0;  // 0: 200 posters, 100 placards, 20 of each other kind
     bool list_misses = false;
     std::filesystem::path write;
 };
 
 constexpr std::uint64_t posters_a_state = 200;
-constexpr std::uint64_t others_a_state = 60;
+constexpr std::uint64_t placards_a_state = 100;
+constexpr std::uint64_t others_a_state = 20;
 
 std::uint64_t number(std::string_view text) {
     std::uint64_t value = 0;
@@ -169,8 +170,9 @@ Results run_all(const Options& options) {
     };
     std::vector<Task> tasks;
     for (const Kind kind : options.kinds) {
-        const bool poster = kind == Kind::poster || kind == Kind::placard;
-        const std::uint64_t usual = poster ? posters_a_state : others_a_state;
+        const std::uint64_t usual = kind == Kind::poster    ? posters_a_state
+                                    : kind == Kind::placard ? placards_a_state
+                                                            : others_a_state;
         const std::uint64_t n = options.per_state > 0 ? options.per_state : usual;
         for (std::uint64_t i = 0; i < n && options.first_seed + i <= options.last_seed; ++i) {
             tasks.push_back({kind, options.first_seed + i});
