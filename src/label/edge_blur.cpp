@@ -34,8 +34,9 @@ struct Row {
 
     [[nodiscard]] bool core(std::uint32_t x) const {
         const std::uint8_t l = labels[x];
-        for (std::uint32_t i = x - 1; i <= x + 1; ++i) {
-            if (labels[i] != l || labels[i - std::size_t{width}] != l || labels[i + width] != l) {
+        const auto row = static_cast<std::ptrdiff_t>(width);
+        for (std::ptrdiff_t i = std::ptrdiff_t{x} - 1; i <= std::ptrdiff_t{x} + 1; ++i) {
+            if (labels[i] != l || labels[i - row] != l || labels[i + row] != l) {
                 return false;
             }
         }
